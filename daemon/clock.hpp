@@ -1,0 +1,22 @@
+// The wall clock, for the edge alone: how far ahead a reading is, whether a file is still being written, when a delivery is
+// tried again. Everything else runs on the time in the readings.
+#pragma once
+
+#include "analytics/instant.hpp"
+
+namespace slipledger {
+
+// Threads: any thread may ask.
+class Clock {
+public:
+    virtual ~Clock() = default;
+    virtual analytics::Instant now() const = 0;
+};
+
+// Threads: any thread may ask.
+class SystemClock final : public Clock {
+public:
+    analytics::Instant now() const override;
+};
+
+}  // namespace slipledger
