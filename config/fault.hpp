@@ -9,9 +9,9 @@ namespace slipledger::config {
 // Threads: a value, share freely.
 struct Fault {
     std::string pointer;  // JSON Pointer (RFC 6901), "/pumps/2/rated/pressure_bar"; "" is the whole file
-    int line = 0;         // of the value in the text, from 1; 0 where the fault is that nothing stands there
-    int column = 0;
-    std::string found;   // what stands there
+    int line = 0;       // in the text, from 1: of the value, or of the object in which it is missing; 0: no text at all
+    int column = 0;     // from 1, of a syntax error; else 0
+    std::string found;  // what stands there
     std::string wanted;  // what is wanted
     std::string code;  // stable: "unknown-key", "duplicate-key", "syntax", "missing", "wrong-type", "out-of-range", ...
 
