@@ -1,0 +1,22 @@
+#include "daemon/report/health.hpp"
+
+#include <algorithm>
+
+namespace slipledger::report {
+
+const SectionHealth& PumpHealth::most_urgent() const {
+    return *std::max_element(sections.begin(), sections.end(),
+                             [](const SectionHealth& a, const SectionHealth& b) { return a.level < b.level; });
+}
+
+const std::vector<std::string>& cautions() {
+    static const std::vector<std::string> all{
+        "Decision support, not a safety function. Readings can be wrong, and so can this report.",
+        "Hydraulic systems hold pressure and hot oil after they stop: lock out, bleed down and let cool before opening "
+        "anything.",
+        "Follow the maker's manual, site rules and local codes first. Work by qualified people only.",
+    };
+    return all;
+}
+
+}  // namespace slipledger::report

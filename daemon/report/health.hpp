@@ -1,0 +1,72 @@
+// The health of a pump as one value: what the command prints, the API sends and the page shows, so that they cannot
+// disagree. health_query.hpp makes it from the ledger; render_text, render_json and render_page only lay it out.
+#pragma once
+
+#include <cstdint>
+#include <map>
+#include <optional>
+#include <string>
+#include <vector>
+
+#include "analytics/course.hpp"
+#include "analytics/instant.hpp"
+#include "daemon/report/episodes.hpp"
+
+namespace slipledger::report {
+
+using analytics::Instant;
+using analytics::Ranged;
+
+// Threads: a value, share freely.
+struct LifeFacts {
+    std::int32_t number = 1;
+    std::optional<Instant> started;  // fitting, or when watching began
+    double running_hours = 0.0;
+    std::string baseline;            // what the ratio is compared with: "when new", "when watching began"
+};
+
+// How many rows went where. Threads: a value, share freely.
+struct DataFacts {
+    std::uint64_t readings = 0;  // cells with a value, all quantities
+    std::uint64_t used = 0;      // operating points judged in this life
+    std::uint64_t disputed = 0;
+    std::map<std::string, std::uint64_t> set_aside;  // operating points by reason
+};
+
+// One section on the basis that speaks for it (the more urgent one where both are fitted). Threads: a value, share freely.
+struct SectionHealth {
+    std::string pump;
+    std::string section;
+    std::string pump_name;
+    std::string machine;
+    std::string area;
+    std::string model;
+    std::string part;      // "rotating group", "cartridge", "gear set"
+    bool only_section = true;
+    std::optional<Instant> as_of;  // newest reading of the pump
+    analytics::Level level = analytics::Level::unjudged;
+    std::string reason;    // why unjudged; empty otherwise
+    std::string sentence;
+    std::optional<analytics::Basis> basis;
+    std::optional<analytics::DayVerdict> verdict;  // of the newest day; none before anything was judged
+    double yearly_cost = analytics::unknown;
+    std::string currency;
+    DataFacts data;
+    LifeFacts life;
+    std::vector<Episode> alarms;   // open ones, most urgent first
+    std::vector<std::string> notes;  // limits of the basis, conventions; plain sentences
+};
+
+// Threads: a value, share freely.
+struct PumpHealth {
+    std::string pump;
+    std::vector<SectionHealth> sections;  // as in the plant file; never empty
+
+    // The section whose level is the most urgent; the first of equals.
+    const SectionHealth& most_urgent() const;
+};
+
+// What stands under every report and page.
+const std::vector<std::string>& cautions();
+
+}  // namespace slipledger::report

@@ -1,0 +1,195 @@
+#include "daemon/report/health_query.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <limits>
+#include <set>
+#include <tuple>
+
+#include "daemon/ledger/lives.hpp"
+#include "daemon/report/alarm_query.hpp"
+#include "daemon/report/sentence.hpp"
+#include "daemon/report/speaking_track.hpp"
+#include "daemon/report/when.hpp"
+
+namespace slipledger::report {
+
+namespace {
+
+constexpr double hours_a_year = 8766.0;
+constexpr std::int32_t duty_days = 28;  // usual duty is taken from so many days
+
+// What a report asks for once and every section of the pump uses.
+struct Asked {
+    const ledger::Reader& reader;
+    const config::Plant& plant;
+    const ledger::Directory& directory;
+    std::optional<Instant> plant_newest;
+};
+
+bool is_silent(const Asked& asked, const std::optional<Instant>& newest) {
+    return newest && asked.plant_newest && *newest + silent_after < *asked.plant_newest;
+}
+
+DataFacts data_facts(const Asked& asked, const config::Pump& pump, const config::Section& section,
+                     const SpeakingTrack& speaking) {
+    DataFacts data;
+    const std::set<ledger::PointId> points{*asked.directory.point(pump.id, section.id), *asked.directory.point(pump.id, "")};
+    for (const ledger::PointId point : points) {
+        const ledger::StoredCount count = asked.reader.count(point);
+        data.readings += count.readings;
+        data.disputed += count.disputed;
+    }
+    if (!speaking.newest_day) return data;
+    const auto counts = asked.reader.standing_counts(speaking.track.id, speaking.newest_day->verdict.life);
+    for (std::size_t i = 0; i < counts.size(); ++i) {
+        const auto standing = static_cast<analytics::Standing>(i);
+        if (is_judged(standing))
+            data.used += counts[i];
+        else if (counts[i] > 0)
+            data.set_aside.emplace(name_of(standing), counts[i]);
+    }
+    return data;
+}
+
+LifeFacts life_facts(const Asked& asked, const config::Pump& pump, const config::Section& section,
+                     const SpeakingTrack& speaking) {
+    LifeFacts facts;
+    const std::vector<ledger::Life> lives = ledger::lives_of(asked.reader.events(pump.id), section.id);
+    if (speaking.newest_day) {
+        facts.number = speaking.newest_day->verdict.life;
+        facts.running_hours = speaking.newest_day->verdict.life_running_h;
+    }
+    for (const ledger::Life& life : lives)
+        if (life.number == facts.number) facts.started = life.since;
+    if (facts.started) {
+        facts.baseline = "when new";
+        return facts;
+    }
+    facts.started = asked.reader.oldest(asked.directory.pumps.at(pump.id));
+    facts.baseline = "when watching began";
+    if (facts.started) facts.baseline += " (" + local_date(*facts.started, asked.plant.time_zone) + ")";
+    return facts;
+}
+
+// Running hours a year: planned duty, else as the newest weeks went.
+double yearly_hours(const Asked& asked, const SpeakingTrack& speaking) {
+    if (asked.plant.duty_h_per_week) return *asked.plant.duty_h_per_week / 7.0 * (hours_a_year / 24.0);
+    const std::int32_t to = speaking.newest_day->verdict.day.date + 1;
+    const auto days = asked.reader.days(speaking.track.id, to - duty_days, to);
+    double running_h = 0.0;
+    for (const ledger::DayRecord& day : days) running_h += day.verdict.running_h;
+    return days.empty() ? analytics::unknown
+                        : running_h / static_cast<double>(days.size()) * (hours_a_year / 24.0);
+}
+
+// Power lost to leakage above healthy, on pumps whose stroke makes up for it. On a fixed pump leakage costs flow, not
+// shaft power, so no money is shown (method: design of the project, "Money").
+double yearly_cost(const Asked& asked, const config::Pump& pump, const SpeakingTrack& speaking) {
+    if (!asked.plant.economics || pump.control == analytics::Control::fixed) return analytics::unknown;
+    const analytics::DayVerdict& day = speaking.newest_day->verdict;
+    if (!(day.leakage_lpm > 0.0)) return analytics::unknown;
+    const double excess_kw = day.leakage_kw * (day.excess_lpm / day.leakage_lpm);
+    const config::Economics& economics = *asked.plant.economics;
+    return std::max(0.0, excess_kw) / economics.motor_efficiency * yearly_hours(asked, speaking) *
+           economics.energy_price_per_kwh;
+}
+
+std::vector<std::string> notes_of(const config::Pump& pump, const config::Section& section,
+                                  const SpeakingTrack& speaking, const DataFacts& data) {
+    std::vector<std::string> notes;
+    if (speaking.track.basis == analytics::Basis::case_drain)
+        notes.emplace_back("Judged by case drain flow: leakage that returns inside the pump is not seen, so efficiency is "
+                           "an upper bound.");
+    else
+        notes.emplace_back("Judged by delivery: what the flow meter and the displacement are uncertain by is in the range.");
+    if (!section.sensors.contains(analytics::Quantity::shaft_speed) && pump.motor.slip_at_rated == 0.0)
+        notes.emplace_back("Speed is a convention: the motor's nominal speed, taken as constant, unless a feed brings "
+                           "shaft_speed.");
+    if (data.set_aside.contains(std::string(name_of(analytics::Standing::no_temperature))))
+        notes.emplace_back("Fluid temperature is missing for some or all points: those are not judged, and no level above "
+                           "watch is given on raw drain share alone.");
+    return notes;
+}
+
+SectionHealth section_health(const Asked& asked, const config::Pump& pump, const config::Section& section) {
+    SectionHealth health;
+    health.pump = pump.id;
+    health.section = section.id;
+    health.pump_name = pump.name;
+    health.machine = pump.machine;
+    health.area = pump.area;
+    health.model = section.model;
+    health.part = replaceable_part(pump.type);
+    health.only_section = pump.sections.size() == 1;
+    health.as_of = asked.reader.newest(asked.directory.pumps.at(pump.id));
+
+    const SpeakingTrack speaking = speaking_track(asked.reader, asked.directory, pump.id, section.id);
+    health.data = data_facts(asked, pump, section, speaking);
+    health.life = life_facts(asked, pump, section, speaking);
+    health.reason = std::string(name_of(analytics::UnjudgedReason::no_data));
+    if (speaking.newest_day) {
+        const analytics::DayVerdict& day = speaking.newest_day->verdict;
+        health.basis = speaking.track.basis;
+        health.verdict = day;
+        health.level = day.level;
+        health.reason = day.level == analytics::Level::unjudged ? std::string(name_of(day.reason)) : std::string();
+        health.yearly_cost = yearly_cost(asked, pump, speaking);
+        health.notes = notes_of(pump, section, speaking, health.data);
+    }
+    if (asked.plant.economics) health.currency = asked.plant.economics->currency;
+    const bool silent = is_silent(asked, health.as_of);
+    if (silent) {
+        health.level = analytics::Level::unjudged;
+        health.reason = std::string(name_of(analytics::UnjudgedReason::silent));
+    }
+    health.alarms = query_alarms(asked.reader, asked.directory, pump.id, section.id);
+    std::erase_if(health.alarms, [](const Episode& episode) { return episode.cleared.has_value(); });
+    std::stable_sort(health.alarms.begin(), health.alarms.end(),
+                     [](const Episode& a, const Episode& b) { return a.level > b.level; });
+    return health;
+}
+
+Asked ask(const ledger::Reader& reader, const config::Plant& plant, const ledger::Directory& directory) {
+    return Asked{reader, plant, directory, reader.newest_of_plant()};
+}
+
+double hours_left(const SectionHealth& health) {
+    const double low = health.verdict ? health.verdict->hours_in_hand.low : analytics::unknown;
+    return std::isfinite(low) ? low : std::numeric_limits<double>::infinity();
+}
+
+double ratio_of(const SectionHealth& health) {
+    const double ratio = health.verdict ? health.verdict->leakage_ratio.value : analytics::unknown;
+    return std::isfinite(ratio) ? ratio : 0.0;
+}
+
+bool more_urgent(const SectionHealth& a, const SectionHealth& b) {
+    if (a.level != b.level) return a.level > b.level;
+    if (hours_left(a) != hours_left(b)) return hours_left(a) < hours_left(b);
+    if (ratio_of(a) != ratio_of(b)) return ratio_of(a) > ratio_of(b);
+    return std::tie(a.pump, a.section) < std::tie(b.pump, b.section);
+}
+
+}  // namespace
+
+PumpHealth query_health(const ledger::Reader& reader, const config::Plant& plant, const config::Pump& pump) {
+    const ledger::Directory directory = reader.directory();
+    const Asked asked = ask(reader, plant, directory);
+    PumpHealth health{pump.id, {}};
+    for (const config::Section& section : pump.sections)
+        health.sections.push_back(section_health(asked, pump, section));
+    return health;
+}
+
+std::vector<SectionHealth> query_fleet(const ledger::Reader& reader, const config::Plant& plant) {
+    const ledger::Directory directory = reader.directory();
+    const Asked asked = ask(reader, plant, directory);
+    std::vector<SectionHealth> fleet;
+    for (const config::Pump& pump : plant.pumps)
+        for (const config::Section& section : pump.sections) fleet.push_back(section_health(asked, pump, section));
+    std::stable_sort(fleet.begin(), fleet.end(), more_urgent);
+    return fleet;
+}
+
+}  // namespace slipledger::report

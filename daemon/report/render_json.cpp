@@ -1,0 +1,160 @@
+#include "daemon/report/render_json.hpp"
+
+#include <nlohmann/json.hpp>
+#include <string>
+
+#include "daemon/report/number.hpp"
+#include "daemon/report/when.hpp"
+
+namespace slipledger::report {
+
+using nlohmann::ordered_json;
+
+namespace {
+
+template <typename Time>
+ordered_json time_or_null(const std::optional<Time>& at) {
+    return at ? ordered_json(rfc3339(*at)) : ordered_json(nullptr);
+}
+
+ordered_json text_or_null(const std::string& text) { return text.empty() ? ordered_json(nullptr) : ordered_json(text); }
+
+ordered_json efficiency_json(const analytics::DayVerdict& day, analytics::Basis basis) {
+    ordered_json out = ranged(day.efficiency);
+    out["baseline"] = number(day.efficiency_baseline);
+    out["basis"] = name_of(basis);
+    out["at"] = day.efficiency_at_rated ? "rated" : "reference";
+    return out;
+}
+
+ordered_json hours_json(const analytics::HoursInHand& hours) {
+    return {{"low", number(hours.low)},
+            {"mid", number(hours.mid)},
+            {"high", number(hours.high)},
+            {"limit", text_or_null(std::string(hours.limit))}};
+}
+
+ordered_json trend_json(const analytics::Trend& trend) {
+    return {{"per_1000_h", number(trend.per_1000_h.value)},
+            {"low", number(trend.per_1000_h.low)},
+            {"high", number(trend.per_1000_h.high)},
+            {"established", trend.established},
+            {"onset", time_or_null(trend.onset)}};
+}
+
+// One cause and its weight; what speaks for and against it is told by the notes until causes are ranked.
+ordered_json causes_json(const SectionHealth& health) {
+    ordered_json causes = ordered_json::array();
+    if (health.verdict && health.verdict->cause != analytics::CauseKind::none)
+        causes.push_back({{"cause", name_of(health.verdict->cause)},
+                          {"weight", number(health.verdict->cause_weight)},
+                          {"for", ordered_json::array()},
+                          {"against", ordered_json::array()}});
+    return causes;
+}
+
+ordered_json data_json(const DataFacts& data) {
+    ordered_json set_aside = ordered_json::object();
+    for (const auto& [reason, count] : data.set_aside) set_aside[reason] = count;
+    return {{"readings", data.readings}, {"used", data.used}, {"disputed", data.disputed}, {"set_aside", set_aside}};
+}
+
+ordered_json life_json(const LifeFacts& life) {
+    return {{"number", life.number},
+            {"started", time_or_null(life.started)},
+            {"running_hours", number(life.running_hours)},
+            {"baseline", life.baseline}};
+}
+
+}  // namespace
+
+ordered_json to_json(const SectionHealth& health) {
+    const analytics::DayVerdict day = health.verdict.value_or(analytics::DayVerdict{});
+    return {{"pump", health.pump},
+            {"section", health.section},
+            {"name", health.pump_name},
+            {"machine", health.machine},
+            {"area", health.area},
+            {"model", health.model},
+            {"as_of", time_or_null(health.as_of)},
+            {"level", name_of(health.level)},
+            {"reason", text_or_null(health.reason)},
+            {"sentence", health.sentence},
+            {"leakage_ratio", ranged(day.leakage_ratio)},
+            {"volumetric_efficiency", efficiency_json(day, health.basis.value_or(analytics::Basis::case_drain))},
+            {"clearance_growth_percent", number(day.clearance_growth_percent)},
+            {"leakage_lpm", number(day.leakage_lpm)},
+            {"excess_lpm", number(day.excess_lpm)},
+            {"leakage_kw", number(day.leakage_kw)},
+            {"slip_coefficient", number(day.slip_coefficient)},
+            {"yearly_cost", number(health.yearly_cost)},
+            {"currency", text_or_null(health.currency)},
+            {"trend", trend_json(day.trend)},
+            {"hours_in_hand", hours_json(day.hours_in_hand)},
+            {"causes", causes_json(health)},
+            {"data", data_json(health.data)},
+            {"life", life_json(health.life)},
+            {"alarms", to_json(health.alarms)},
+            {"notes", health.notes},
+            {"cautions", cautions()}};
+}
+
+ordered_json to_json(const PumpHealth& health) {
+    ordered_json out = to_json(health.most_urgent());
+    if (health.sections.size() > 1) out["sections"] = to_json(health.sections);
+    return out;
+}
+
+ordered_json to_json(const std::vector<SectionHealth>& fleet) {
+    ordered_json out = ordered_json::array();
+    for (const SectionHealth& section : fleet) out.push_back(to_json(section));
+    return out;
+}
+
+ordered_json to_json(const std::vector<HistoryRow>& history) {
+    ordered_json out = ordered_json::array();
+    for (const HistoryRow& row : history) {
+        ordered_json line{{"time", rfc3339(row.time)},
+                          {"pump", row.pump},
+                          {"section", row.section},
+                          {"basis", name_of(row.basis)},
+                          {"life", row.life},
+                          {"level", name_of(row.level)},
+                          {"reason", text_or_null(row.reason)},
+                          {"leakage_ratio", ranged(row.leakage_ratio)}};
+        if (row.filtered_ratio) line["filtered_ratio"] = ranged(*row.filtered_ratio);
+        line["volumetric_efficiency"] = ranged(row.efficiency);
+        line["excess_lpm"] = number(row.excess_lpm);
+        line["hours_in_hand"] = row.hours_in_hand ? hours_json(*row.hours_in_hand) : ordered_json(nullptr);
+        line["cause"] = text_or_null(row.cause);
+        out.push_back(std::move(line));
+    }
+    return out;
+}
+
+ordered_json to_json(const Episode& episode) {
+    return {{"id", episode.id},
+            {"pump", episode.pump},
+            {"section", episode.section},
+            {"basis", name_of(episode.basis)},
+            {"rule", episode.rule},
+            {"level", name_of(episode.level)},
+            {"cause", text_or_null(episode.cause)},
+            {"state", episode.state},
+            {"raised", rfc3339(episode.raised)},
+            {"cleared", time_or_null(episode.cleared)},
+            {"life", episode.life},
+            {"value", number(episode.value)},
+            {"limit", number(episode.limit)},
+            {"acknowledged_by", text_or_null(episode.acknowledged_by)},
+            {"shelved_until", time_or_null(episode.shelved_until)},
+            {"why", text_or_null(episode.why)}};
+}
+
+ordered_json to_json(const std::vector<Episode>& episodes) {
+    ordered_json out = ordered_json::array();
+    for (const Episode& episode : episodes) out.push_back(to_json(episode));
+    return out;
+}
+
+}  // namespace slipledger::report

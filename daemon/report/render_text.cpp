@@ -1,0 +1,169 @@
+#include "daemon/report/render_text.hpp"
+
+#include <fmt/format.h>
+
+#include <cmath>
+
+#include "analytics/units.hpp"
+#include "daemon/report/when.hpp"
+
+namespace slipledger::report {
+
+namespace {
+
+std::string rule_off() { return std::string(page_width, '-') + '\n'; }
+
+std::string plain(double value, int decimals) {
+    return std::isfinite(value) ? fmt::format("{:.{}f}", value, decimals) : std::string("-");
+}
+
+std::string with_range(const Ranged& range, int decimals, double factor = 1.0) {
+    if (!std::isfinite(range.value)) return "-";
+    return fmt::format("{} ({} to {})", plain(range.value * factor, decimals), plain(range.low * factor, decimals),
+                       plain(range.high * factor, decimals));
+}
+
+// One line of the table of figures: what, how much, and beside it what to hold it against.
+std::string figure(std::string_view name, std::string_view value, std::string_view beside = {}) {
+    return paragraph("  " + cell(name, 24), fmt::format("{}{}{}", value, beside.empty() ? "" : "   ", beside));
+}
+
+std::string flow(double lpm, const config::Plant& plant) {
+    if (!std::isfinite(lpm)) return "-";
+    if (plant.display_units == config::DisplayUnits::us) return fmt::format("{:.3f} gpm", analytics::gpm_from_lpm(lpm));
+    return fmt::format("{:.2f} L/min", lpm);
+}
+
+std::string hours(double h) { return std::isfinite(h) ? fmt::format("{:.0f}", h) : std::string("-"); }
+
+std::string hours_in_hand_text(const analytics::HoursInHand& in_hand) {
+    if (!std::isfinite(in_hand.low)) return "-";
+    if (!std::isfinite(in_hand.mid)) return fmt::format("at least {} h (no wear trend)", hours(in_hand.low));
+    const std::string high = std::isfinite(in_hand.high) ? hours(in_hand.high) : std::string("open");
+    return fmt::format("{} h ({} to {}) to the {} limit", hours(in_hand.mid), hours(in_hand.low), high, in_hand.limit);
+}
+
+std::string heading(const SectionHealth& health, const config::Plant& plant) {
+    std::string out = fmt::format("{}  {}\n", printable(health.pump), printable(health.pump_name));
+    out += fmt::format("section {}, {} {}, life {}", printable(health.section), printable(health.model), health.part,
+                       health.life.number);
+    if (!health.machine.empty()) out += fmt::format(", {}", printable(health.machine));
+    out += '\n';
+    if (health.as_of) out += fmt::format("as of {}\n", local_minute(*health.as_of, plant.time_zone));
+    return out;
+}
+
+std::string efficiency_line(const SectionHealth& health, const analytics::DayVerdict& day) {
+    const std::string_view bound = health.basis == analytics::Basis::case_drain ? ", an upper bound" : "";
+    const std::string beside =
+        std::isfinite(day.efficiency_baseline)
+            ? fmt::format("{:.1f} % when healthy; at the {} point{}", day.efficiency_baseline * 100.0,
+                          day.efficiency_at_rated ? "rated" : "reference", bound)
+            : std::string();
+    return figure("volumetric efficiency", with_range(day.efficiency, 1, 100.0) + " %", beside);
+}
+
+std::string trend_text(const analytics::Trend& trend) {
+    if (!std::isfinite(trend.per_1000_h.value)) return "-";
+    return fmt::format("{:+.2f} ({:+.2f} to {:+.2f}) in ratio per 1000 h{}", trend.per_1000_h.value,
+                       trend.per_1000_h.low, trend.per_1000_h.high, trend.established ? "" : ", not established");
+}
+
+std::string figures(const SectionHealth& health, const config::Plant& plant) {
+    if (!health.verdict) return {};
+    const analytics::DayVerdict& day = *health.verdict;
+    std::string out = figure("leakage ratio", with_range(day.leakage_ratio, 2), "1 = as new");
+    out += efficiency_line(health, day);
+    out += figure("leakage", flow(day.leakage_lpm, plant),
+                  fmt::format("{} above healthy, {} kW", flow(day.excess_lpm, plant), plain(day.leakage_kw, 2)));
+    out += figure("clearance growth",
+                  std::isfinite(day.clearance_growth_percent) ? plain(day.clearance_growth_percent, 0) + " %" : "-");
+    out += figure("trend", trend_text(day.trend));
+    if (day.trend.onset) out += figure("since", local_date(*day.trend.onset, plant.time_zone));
+    out += figure("hours in hand", hours_in_hand_text(day.hours_in_hand));
+    if (day.cause != analytics::CauseKind::none)
+        out += figure("likely cause", fmt::format("{} ({:.0f} %)", name_of(day.cause), day.cause_weight * 100.0));
+    if (std::isfinite(health.yearly_cost))
+        out += figure("cost of the leak", fmt::format("{:.0f} {} a year", health.yearly_cost, health.currency));
+    return out;
+}
+
+std::string data_text(const SectionHealth& health) {
+    std::string aside;
+    for (const auto& [reason, count] : health.data.set_aside)
+        aside += fmt::format("{}{} {}", aside.empty() ? "" : ", ", reason, count);
+    std::string out = figure("life", fmt::format("{:.0f} running hours watched, compared with {}",
+                                                 health.life.running_hours, health.life.baseline));
+    out += figure("readings", fmt::format("{} stored, {} disputed", health.data.readings, health.data.disputed));
+    out += figure("operating points", fmt::format("{} judged; set aside: {}", health.data.used,
+                                                  aside.empty() ? "none" : aside));
+    return out;
+}
+
+std::string episode_line(const Episode& episode, const config::Plant& plant, const Paper& paper) {
+    const std::string until = episode.cleared ? local_minute(*episode.cleared, plant.time_zone) : std::string("open");
+    return fmt::format("{} {} {} {}\n{:13}{} to {}, {}\n", level_word(episode.level, paper),
+                       cell(printable(episode.pump) + "/" + printable(episode.section), 24), cell(episode.rule, 19),
+                       episode.cause, "", local_minute(episode.raised, plant.time_zone), until, episode.state);
+}
+
+std::string ratio_cell(const Ranged& ratio) {
+    if (!std::isfinite(ratio.value)) return cell("-", 19);
+    return cell(fmt::format("{:.2f} ({:.2f} to {:.2f})", ratio.value, ratio.low, ratio.high), 19);
+}
+
+}  // namespace
+
+std::string health_text(const SectionHealth& health, const config::Plant& plant, const Paper& paper) {
+    std::string out = heading(health, plant) + rule_off();
+    const std::string lead = level_word(health.level, paper);
+    const std::string body = paragraph(std::string(14, ' '), health.sentence);
+    out += lead + "  " + body.substr(14);
+    out += '\n' + figures(health, plant) + data_text(health);
+    for (const std::string& note : health.notes) out += paragraph("  note: ", note);
+    for (const Episode& alarm : health.alarms) out += "  alarm: " + alarm.rule + ", " + alarm.state + "\n";
+    return out;
+}
+
+std::string health_text(const PumpHealth& health, const config::Plant& plant, const Paper& paper) {
+    std::string out;
+    for (const SectionHealth& section : health.sections) out += health_text(section, plant, paper) + '\n';
+    out += rule_off();
+    for (const std::string& caution : cautions()) out += paragraph("! ", caution);
+    return out;
+}
+
+std::string fleet_text(const std::vector<SectionHealth>& fleet, const config::Plant& plant, const Paper& paper) {
+    std::string out = printable(plant.name) + "\n" + rule_off();
+    for (const SectionHealth& health : fleet) {
+        const analytics::DayVerdict day = health.verdict.value_or(analytics::DayVerdict{});
+        const std::string name = health.only_section ? health.pump : health.pump + "/" + health.section;
+        out += fmt::format("{} {} {} {}\n", level_word(health.level, paper), cell(printable(name), 24),
+                           ratio_cell(day.leakage_ratio), hours_in_hand_text(day.hours_in_hand).substr(0, 21));
+        out += paragraph(std::string(13, ' '), health.sentence);
+    }
+    out += rule_off();
+    out += paragraph("", "Columns: level, pump, leakage ratio with its 80 % range (1 = as new), hours in hand. `slipledger health PUMP` tells more.");
+    for (const std::string& caution : cautions()) out += paragraph("! ", caution);
+    return out;
+}
+
+std::string history_text(const std::vector<HistoryRow>& history, const config::Plant& plant, const Paper& paper) {
+    std::string out = fmt::format("{} {} {} {} {}\n", cell("time", 16), cell("section", 8), cell("level", 12),
+                                  cell("ratio (80 % range)", 19), "efficiency  excess");
+    for (const HistoryRow& row : history)
+        out += fmt::format("{} {} {} {} {:>8} % {:>8}\n", local_minute(row.time, plant.time_zone).substr(0, 16),
+                           cell(printable(row.section), 8), level_word(row.level, paper),
+                           ratio_cell(row.leakage_ratio), plain(row.efficiency.value * 100.0, 1),
+                           plain(row.excess_lpm, 2));
+    return out + paragraph("", fmt::format("Excess leakage in L/min; times in {}.", plant.time_zone));
+}
+
+std::string alerts_text(const std::vector<Episode>& episodes, const config::Plant& plant, const Paper& paper) {
+    if (episodes.empty()) return "no alarms\n";
+    std::string out;
+    for (const Episode& episode : episodes) out += episode_line(episode, plant, paper);
+    return out;
+}
+
+}  // namespace slipledger::report

@@ -1,0 +1,32 @@
+#include "daemon/report/when.hpp"
+
+#include <date/date.h>
+#include <date/tz.h>
+
+#include <chrono>
+
+namespace slipledger::report {
+
+namespace {
+
+// The date library predates std::chrono's calendar and shares its clock, so an instant passes as it is.
+date::zoned_time<std::chrono::minutes> in_zone(analytics::Instant at, const std::string& zone) {
+    return {date::locate_zone(zone), std::chrono::floor<std::chrono::minutes>(at)};
+}
+
+}  // namespace
+
+std::string rfc3339(analytics::Instant at) {
+    const auto second = std::chrono::floor<std::chrono::seconds>(at);
+    return at == second ? date::format("%FT%TZ", second) : date::format("%FT%TZ", at);
+}
+
+std::string local_minute(analytics::Instant at, const std::string& zone) {
+    return date::format("%F %H:%M %Z", in_zone(at, zone));
+}
+
+std::string local_date(analytics::Instant at, const std::string& zone) { return date::format("%F", in_zone(at, zone)); }
+
+std::string iso_date(std::int32_t days) { return date::format("%F", date::sys_days(date::days(days))); }
+
+}  // namespace slipledger::report

@@ -1,0 +1,24 @@
+// Times as reports write them: RFC 3339 in UTC for machines, the plant's own time with its zone for people.
+#pragma once
+
+#include <cstdint>
+#include <string>
+#include <string_view>
+
+#include "analytics/instant.hpp"
+
+namespace slipledger::report {
+
+// "2026-03-01T06:00:00Z"; milliseconds only where there are some.
+std::string rfc3339(analytics::Instant at);
+
+// "2026-03-01 07:00 CET". `zone` must be known to the tz database.
+std::string local_minute(analytics::Instant at, const std::string& zone);
+
+// "2026-03-01", the plant's day in which the instant lies.
+std::string local_date(analytics::Instant at, const std::string& zone);
+
+// "2026-03-01" of a day counted from 1970-01-01.
+std::string iso_date(std::int32_t days);
+
+}  // namespace slipledger::report
