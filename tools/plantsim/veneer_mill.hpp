@@ -1,0 +1,16 @@
+// The invented veneer mill of the demonstration: nine pumps, made up so that every kind of verdict has its case. It is
+// no real plant; sizes are what such pumps usually have. config/examples/veneer-mill.json is the same mill as its
+// maintenance office would write it down, with name plates instead of truths.
+#pragma once
+
+#include "tools/plantsim/drawing.hpp"
+
+namespace slipledger::plantsim {
+
+PlantDrawing veneer_mill();
+
+// A mineral-oil pressure-compensated axial piston rotating group of 140 cm3/rev, healthy. Also what the load
+// generators leak with.
+std::vector<Gap> axial_piston_gaps(double size = 1.0);
+
+}  // namespace slipledger::plantsim
