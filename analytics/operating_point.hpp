@@ -1,31 +1,27 @@
-// Readings of one section, and the operating points they make: an as-of join in which each quantity takes its last value
-// not older than its hold. A point stands at each time the section's flow quantity has a value.
+// Operating points: everything needed to judge one section, aligned to one instant by an as-of join in which each
+// quantity takes its last value not older than its hold. A point stands at each time the section's flow quantity has a
+// value.
 #pragma once
 
 #include <array>
+#include <cstddef>
 #include <vector>
 
 #include "analytics/instant.hpp"
 #include "analytics/quantity.hpp"
+#include "analytics/readings.hpp"
 #include "analytics/section_spec.hpp"
 #include "analytics/usual.hpp"
 
 namespace slipledger::analytics {
 
-// One quantity over time: ascending, no equal times, no NaN. Disputed and missing cells are simply not in it.
-struct Series {
-    std::vector<Instant> times;
-    std::vector<double> values;
-};
-
-using SectionReadings = std::array<Series, quantity_count>;  // pump- and reservoir-level quantities already merged in
-
+// A field stays NaN where its quantity has no value, or none young enough.
 struct OperatingPoint {
     Instant time;
-    double flow_lpm = unknown;           // drain or delivery, as the basis says
+    double flow_lpm = unknown;  // drain or delivery, as the basis says
     double outlet_bar = unknown;
-    double case_bar = unknown;           // NaN where unmeasured: counts as 0 bar gauge
-    double inlet_bar = unknown;          // the same
+    double case_bar = unknown;   // NaN where unmeasured: counts as 0 bar gauge
+    double inlet_bar = unknown;  // the same
     double speed_rpm = unknown;
     double temperature_c = unknown;
     double stroke = unknown;
@@ -33,8 +29,41 @@ struct OperatingPoint {
     double running = unknown;
 };
 
+// Gives the points one by one, so that a year of them need not stand in memory. The readings must outlive it.
+// Threads: one at a time.
+class Aligner {
+public:
+    Aligner(const SectionReadings& readings, Basis basis, const Usual& usual, Instant from, Instant to);
+
+    // The next point with time in [from, to), ascending; null after the last. Valid until the next call.
+    // Not computed: a join.
+    const OperatingPoint* next();
+
+private:
+    struct Joined {
+        const Series* series = nullptr;
+        Milliseconds hold{0};
+        std::size_t passed = 0;  // readings at or before the point
+        double OperatingPoint::*field = nullptr;
+    };
+
+    const Series& flow_;
+    std::size_t next_ = 0;
+    std::size_t end_ = 0;
+    std::array<Joined, 8> joined_;
+    std::size_t joined_count_ = 0;
+    OperatingPoint point_;
+};
+
 // Points with time in [from, to), ascending.
+// Not computed: a join.
 std::vector<OperatingPoint> align(const SectionReadings& readings, Basis basis, const Usual& usual, Instant from,
                                   Instant to);
+
+// The quantity whose readings the points of a basis stand at.
+// Not computed: a name.
+constexpr Quantity flow_quantity(Basis basis) {
+    return basis == Basis::case_drain ? Quantity::case_drain_flow : Quantity::delivery_flow;
+}
 
 }  // namespace slipledger::analytics

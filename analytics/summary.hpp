@@ -1,7 +1,7 @@
-// The hour summary: the only thing that trends, verdicts and reports ever read. It keeps, of the operating points of one
-// section, basis and hour (or other summary length), counts by what was made of them and, for each judged regime, means
-// and second moments of leakage and of the model's features. The model is linear in the features, so their means are
-// exact where the leakage of a mean operating point is not.
+// The hour summary: the only thing that trends, verdicts and reports ever read. It keeps, of the operating points of
+// one section, basis and hour (or other summary length), counts by what was made of them and, for each judged regime,
+// means and second moments of leakage and of the model's features. The model is linear in the features, so their means
+// are exact where the leakage of a mean operating point is not.
 #pragma once
 
 #include <array>
@@ -11,50 +11,24 @@
 
 #include "analytics/instant.hpp"
 #include "analytics/operating_point.hpp"
+#include "analytics/regime.hpp"
 #include "analytics/section_spec.hpp"
 #include "analytics/usual.hpp"
 
 namespace slipledger::analytics {
 
-// What became of an operating point: judged in one of the two judged regimes, or set aside for a reason.
-enum class Standing : std::uint8_t {
-    full_flow,
-    compensating,
-    stopped,
-    below_minimum_speed,
-    cold,
-    thin,
-    transient,
-    part_stroke,
-    relieving,
-    motoring,
-    variable_speed,
-    no_pressure,
-    no_speed,
-    no_temperature,
-    below_least_flow,
-    impossible,  // readings contradict each other: an instrument first
-};
-
-inline constexpr std::size_t standing_count = 16;
-inline constexpr std::array<std::string_view, standing_count> standing_names{
-    "full-flow", "compensating", "stopped", "below-minimum-speed", "cold", "thin", "transient", "part-stroke",
-    "relieving", "motoring", "variable-speed", "no-pressure", "no-speed", "no-temperature", "below-least-flow",
-    "impossible"};
-
-constexpr std::string_view name_of(Standing standing) { return standing_names[static_cast<std::size_t>(standing)]; }
-constexpr bool is_judged(Standing standing) { return standing <= Standing::compensating; }
-
 inline constexpr std::size_t judged_regimes = 2;  // full_flow, compensating: the first two standings
 
 // Moments over the points of one judged regime that were left after trimming. Order of leakage and features in
-// `covariance`: leakage, f1, f2, f3; packed lower triangle by rows (yy, 1y, 11, 2y, 21, 22, 3y, 31, 32, 33). Population moments.
+// `covariance`: leakage, f1, f2, f3; packed lower triangle by rows (yy, 1y, 11, 2y, 21, 22, 3y, 31, 32, 33). Population
+// moments.
 struct Moments {
-    std::uint32_t count = 0;             // points in the means; 0: regime not seen, all else meaningless
-    double leakage_lpm = 0.0;            // mean; drain less flushing, or name-plate theoretical flow less delivery
-    std::array<double, 3> feature{};     // means of dp/mu, sqrt(dp/rho), n, each over its value at the reference point
+    std::uint32_t count = 0;          // points in the means; 0: regime not seen, all else meaningless
+    double leakage_lpm = 0.0;         // mean; drain less flushing, or name-plate theoretical flow less delivery
+    std::array<double, 3> feature{};  // means of dp/mu, sqrt(dp/rho), n, each over its value at the reference point
     std::array<double, 10> covariance{};
-    double standard_error_lpm = 0.0;     // of mean leakage about a line on f1, successive points taken as correlated
+    double standard_error_lpm =
+        0.0;  // of mean leakage about a line on f1, successive points taken as correlated; 0 under 3 points
     double dp_bar = 0.0;
     double temperature_c = 0.0;
     double dp_variance = 0.0;
@@ -62,21 +36,21 @@ struct Moments {
     double temperature_variance = 0.0;
     double viscosity_cst = 0.0;
     double speed_rpm = 0.0;
-    double delivery_lpm = 0.0;           // mean, at inlet density; 0 on the drain basis
-    double theoretical_lpm = 0.0;        // mean by the name plate; at full stroke while compensating
+    double delivery_lpm = 0.0;     // mean, at inlet density; 0 on the drain basis
+    double theoretical_lpm = 0.0;  // mean by the name plate; at full stroke while compensating
 };
 
 struct Summary {
     Instant start;
-    Milliseconds length{0};              // may be cut short where a life or a dated fact begins or ends
+    Milliseconds length{0};  // may be cut short where a life or a dated fact begins or ends
     Basis basis = Basis::case_drain;
     std::int32_t life = 1;
     std::array<std::uint32_t, standing_count> counts{};
     double running_h = 0.0;
     double judged_h = 0.0;
-    std::uint32_t stop_count = 0;        // readings of a settled stop: the meter's zero
-    double stop_flow_lpm = unknown;      // their median
-    double drain_share = unknown;        // raw drain over theoretical flow, mean while running
+    std::uint32_t stop_count = 0;    // readings of a settled stop: the meter's zero
+    double stop_flow_lpm = unknown;  // their median
+    double drain_share = unknown;    // raw drain over theoretical flow, mean while running
     double highest_temperature_c = unknown;
     double highest_case_bar = unknown;
     double lowest_inlet_bar = unknown;
@@ -87,8 +61,8 @@ struct Summary {
 // Readings needed before the first summary so that every summary depends only on a bounded past (hold, settling, stop).
 inline constexpr Milliseconds summary_lead_in = std::chrono::hours(2);
 
-// Summaries of [from, to), cut at multiples of `length` since the epoch (UTC); stretches without an operating point give none. `readings`
-// reach from `from - summary_lead_in` to `to` at least and may hold more.
+// Summaries of [from, to), cut at multiples of `length` since the epoch (UTC); stretches without an operating point
+// give none. `readings` reach from `from - summary_lead_in` to `to` at least and may hold more.
 std::vector<Summary> summarise(const SectionReadings& readings, const SectionSpec& spec, const Usual& usual,
                                Basis basis, std::int32_t life, Instant from, Instant to, Milliseconds length);
 
