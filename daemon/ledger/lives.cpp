@@ -1,0 +1,110 @@
+#include "daemon/ledger/lives.hpp"
+
+#include <algorithm>
+#include <nlohmann/json.hpp>
+
+namespace slipledger::ledger {
+namespace {
+
+using nlohmann::json;
+
+json body_of(const Event& event) {
+    json body = json::parse(event.body, nullptr, false);
+    return body.is_object() ? body : json::object();
+}
+
+std::string text_in(const json& body, const char* key) {
+    const auto found = body.find(key);
+    return found != body.end() && found->is_string() ? found->get<std::string>() : std::string();
+}
+
+std::optional<double> number_in(const json& body, const char* key) {
+    const auto found = body.find(key);
+    return found != body.end() && found->is_number() ? std::optional(found->get<double>()) : std::nullopt;
+}
+
+std::optional<analytics::MakerTest> maker_test_in(const json& body) {
+    const auto found = body.find("maker_test");
+    if (found == body.end() || !found->is_object()) return std::nullopt;
+    const auto leakage = number_in(*found, "leakage_lpm");
+    if (!leakage) return std::nullopt;
+    analytics::MakerTest test;
+    test.leakage_lpm = *leakage;
+    test.at.pressure_bar = number_in(*found, "pressure_bar").value_or(analytics::unknown);
+    test.at.speed_rpm = number_in(*found, "speed_rpm").value_or(analytics::unknown);
+    test.at.temperature_c = number_in(*found, "temperature_c").value_or(analytics::unknown);
+    test.viscosity_cst = number_in(*found, "viscosity_cst").value_or(analytics::unknown);
+    return test;
+}
+
+Life fitted_by(const Event& event, std::int32_t number) {
+    const json body = body_of(event);
+    Life life;
+    life.number = number;
+    life.since = event.at;
+    life.displacement_cm3 = number_in(body, "displacement_cm3");
+    life.model = text_in(body, "model");
+    life.maker_test = maker_test_in(body);
+    life.note = text_in(body, "note");
+    return life;
+}
+
+}  // namespace
+
+std::vector<Life> lives_of(std::span<const Event> events, std::string_view section) {
+    std::vector<Life> lives(1);
+    for (const Event& event : events) {
+        if (event.kind != "replaced" || !(event.section.empty() || event.section == section)) continue;
+        if (lives.back().since == event.at) lives.pop_back();  // told twice: the later entry corrects the earlier
+        if (!lives.empty()) {
+            lives.back().ended = event.at;
+            lives.back().found = text_in(body_of(event), "found");
+        }
+        lives.push_back(fitted_by(event, static_cast<std::int32_t>(lives.size()) + 1));
+    }
+    return lives;
+}
+
+std::vector<FactsFrom> facts_of(std::span<const Event> events) {
+    std::vector<const Event*> told;
+    for (const Event& event : events)
+        if (event.kind == "plant-changed") told.push_back(&event);
+    std::ranges::sort(told, {}, &Event::id);
+    std::vector<FactsFrom> facts;
+    for (const Event* event : told) {
+        const json body = body_of(*event);
+        const auto now = body.find("now");
+        if (now == body.end()) continue;
+        while (!facts.empty() && facts.back().at >= event->at) facts.pop_back();
+        FactsFrom entry{event->at, now->dump(), std::nullopt};
+        if (const auto since = number_in(body, "since_ms"))
+            entry.since = Instant(analytics::Milliseconds(static_cast<std::int64_t>(*since)));
+        facts.push_back(std::move(entry));
+    }
+    return facts;
+}
+
+std::optional<Event> plant_change(const config::Pump& pump, std::span<const Event> events,
+                                  std::optional<Instant> newest_reading, Instant now) {
+    const json facts = json::parse(config::pump_facts(pump));
+    json body{{"now", facts}};
+    if (pump.since) body["since_ms"] = pump.since->time_since_epoch().count();
+    Event event;
+    event.pump = pump.id;
+    event.kind = "plant-changed";
+    event.entered = now;
+    const auto last = std::ranges::max_element(events, {}, [](const Event& candidate) {
+        return candidate.kind == "plant-changed" ? candidate.id : std::int64_t{-1};
+    });
+    if (last != events.end() && last->kind == "plant-changed") {
+        const json told = body_of(*last);
+        if (told.value("now", json()) == facts) return std::nullopt;
+        body["before"] = told.value("now", json());
+        const bool since_is_new = pump.since && told.value("since_ms", json()) != body["since_ms"];
+        event.at = since_is_new ? *pump.since : newest_reading.value_or(now);
+    }
+    event.body = body.dump();
+    return event;
+}
+
+}  // namespace slipledger::ledger
