@@ -50,4 +50,70 @@ struct AlarmChange {
     double limit = unknown;         // what it passed
 };
 
+// One judgement of a rule. `beyond`: the most urgent level whose limit is passed; `within`: the most urgent level not yet
+// left, its deadband counted. `unjudged` in both: nothing passed, all left.
+struct RuleJudgement {
+    Level beyond = Level::unjudged;
+    Level within = Level::unjudged;
+    double value = unknown;
+};
+
+// How long a judgement must last before it counts, in data time and in judgements; both must be met.
+struct RuleTiming {
+    Milliseconds on_delay{0};
+    Milliseconds off_delay{0};
+    std::int32_t judgements = 1;
+};
+
+// Limit of a level on a ladder; NaN where it has none.
+// Not computed: a lookup. Returns the ladder's unit. Source: plant file.
+double limit_of(const Ladder& ladder, Level level);
+
+// Judges a value that is worse the higher it is: beyond a limit when above it, still within while above limit less deadband.
+// NaN passes nothing.
+// Example: watch 80, plan 90, deadband 3: 85 -> beyond watch, within watch; 78 -> beyond nothing, within watch.
+// Source: IEC 62682 (deadband).
+RuleJudgement judge_ladder(double value, const Ladder& ladder);
+
+// The state of one rule. Feed it judgements in time order; it answers with the change, if one came of it.
+//
+// A level is raised once its limit has been passed for the on-delay and the wanted number of judgements in a row; raising
+// one raises those below. It is left once the value has been inside, deadband counted, for the off-delay and as many judgements.
+// Source: IEC 62682 (on-delay, off-delay, deadband).
+//
+// Threads: one at a time.
+class AlarmState {
+public:
+    std::optional<AlarmChange> judge(Rule rule, const RuleJudgement& judgement, const Ladder& ladder,
+                                     const RuleTiming& timing, Instant at);
+    // Ends the episode, if one is on: at the end of a life.
+    std::optional<AlarmChange> end(Rule rule, Instant at);
+
+    // `unjudged` while no episode is on. Not computed: reads the state.
+    Level level() const;
+    // Data time the episode was raised. Not computed: reads the state.
+    Instant began() const { return began_; }
+
+    template <typename Self, typename Io>
+    static void each_field(Self& self, Io& io) {
+        io(self.latches_, self.began_);
+    }
+
+private:
+    struct Latch {
+        bool on = false;
+        std::int32_t turned = 0;  // judgements in a row against the present position
+        Instant since;            // first of them
+
+        void judge(bool beyond, bool within, const RuleTiming& timing, Instant at);
+
+        template <typename Self, typename Io>
+        static void each_field(Self& self, Io& io) {
+            io(self.on, self.turned, self.since);
+        }
+    };
+    std::array<Latch, 3> latches_{};  // watch, plan, act
+    Instant began_;
+};
+
 }  // namespace slipledger::analytics

@@ -1,0 +1,59 @@
+#include "analytics/change.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+namespace slipledger::analytics {
+
+namespace {
+
+constexpr double departure = 3.0;     // standard deviations looked for
+constexpr double most_surprise = 4.0; // counted of one summary
+constexpr double enough = 8.0;        // two net summaries at three standard deviations
+constexpr double done_within_h = 8.0; // running hours
+const double least_step = std::log(1.3);
+constexpr Milliseconds same_hour = std::chrono::hours(1);
+
+double added(double evidence, double surprise) {
+    return std::max(0.0, evidence + departure * surprise - departure * departure / 2.0);
+}
+
+}  // namespace
+
+bool ChangeDetector::add(double surprise, Instant at, double running_h, LogEstimate wear_before) {
+    if (!std::isfinite(surprise)) return false;
+    const double counted = std::clamp(surprise, -most_surprise, most_surprise);
+    const bool quiet = up_ == 0.0 && down_ == 0.0;
+    up_ = added(up_, counted);
+    down_ = added(down_, -counted);
+    if (quiet && !following_) {
+        began_ = at;
+        began_h_ = running_h;
+        ln_before_ = wear_before.ln;
+    }
+    if (up_ < enough && down_ < enough) return false;
+    up_ = down_ = 0.0;
+    following_ = true;
+    return true;
+}
+
+void ChangeDetector::explain(Instant at) {
+    explained_ = true;
+    explained_at_ = at;
+}
+
+bool ChangeDetector::follow(LogEstimate wear, Instant at, double running_h) {
+    if (step_.active && wear.ln - step_.ln_before < least_step / 2.0) step_ = Step{};
+    if (!following_) return false;
+    const double size = wear.ln - ln_before_;
+    const bool told = size >= least_step && size - 1.2816 * wear.sd >= least_step / 2.0;
+    if (told || running_h - began_h_ > done_within_h) following_ = false;
+    if (!told) return false;
+    const bool attributed = explained_ && explained_at_ >= began_ - same_hour && explained_at_ <= at;
+    // A second step on top of one in force is counted from where the first began.
+    const double before = step_.active ? std::min(step_.ln_before, ln_before_) : ln_before_;
+    step_ = {.active = true, .attributed = attributed, .began = began_, .ln_before = before, .ln_size = size};
+    return true;
+}
+
+}  // namespace slipledger::analytics

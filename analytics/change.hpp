@@ -1,0 +1,69 @@
+// Sudden change of a section: sums the evidence in the filter's surprises, says when wear must be let go, and afterwards
+// whether what it did was a step. Slow wear never shows here; the filter's drift follows it.
+#pragma once
+
+#include <cstdint>
+
+#include "analytics/instant.hpp"
+#include "analytics/section_spec.hpp"
+#include "analytics/wear_filter.hpp"
+
+namespace slipledger::analytics {
+
+// A step in force: from when, from what ratio, and whether something else explains it first.
+struct Step {
+    bool active = false;
+    bool attributed = false;     // oil, sensor, setting or operating range changed at the same hour
+    Instant began;               // of the first summary that departed
+    double ln_before = unknown;  // ln of the ratio before it
+    double ln_size = unknown;    // ln of ratio after over before, when it was told
+};
+
+// Threads: one at a time.
+class ChangeDetector {
+public:
+    // Adds one summary's surprise, as a log likelihood ratio of a departure of 3 standard deviations against none, in each
+    // direction:
+    //
+    //   g = max(0, g + 3 r - 4.5),   r = surprise, held within -+4 so that no summary can decide alone
+    //
+    // True when g passes 8: wear is to be let go before this summary is fed. NaN adds nothing.
+    // Example: surprises 3, 3 -> true at the second; 2.5, 2.5, 2.5 -> false; 9 once -> false.
+    // Source: E. S. Page, Continuous inspection schemes (1954) (from memory); limits from method.md, 5.
+    bool add(double surprise, Instant at, double running_h, LogEstimate wear_before);
+
+    // Facts or operating range changed: a departure beginning within an hour of it is attributed to it.
+    // Not computed: bookkeeping.
+    void explain(Instant at);
+
+    // After each feed: follows an opened departure for 8 running hours and says whether it has just become a step, that is
+    // ln ratio grew by at least ln 1.3 with its low end past half of that; and when a step has gone back by half of the
+    // least size it is over.
+    // Example: before 0, then 0.5 +- 0.05 two hours later -> a step of ratio 1.65.
+    // Source: method.md, 5.
+    bool follow(LogEstimate wear, Instant at, double running_h);
+
+    // Not computed: reads the state.
+    const Step& step() const { return step_; }
+    bool departing() const { return following_; }
+
+    template <typename Self, typename Io>
+    static void each_field(Self& self, Io& io) {
+        io(self.up_, self.down_, self.began_, self.began_h_, self.ln_before_, self.following_, self.explained_,
+           self.explained_at_, self.step_.active, self.step_.attributed, self.step_.began, self.step_.ln_before,
+           self.step_.ln_size);
+    }
+
+private:
+    double up_ = 0.0;
+    double down_ = 0.0;
+    Instant began_;
+    double began_h_ = 0.0;
+    double ln_before_ = 0.0;
+    bool following_ = false;
+    bool explained_ = false;
+    Instant explained_at_;
+    Step step_;
+};
+
+}  // namespace slipledger::analytics

@@ -1,0 +1,491 @@
+#include "analytics/course.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <limits>
+#include <tuple>
+#include <utility>
+
+#include "analytics/change.hpp"
+#include "analytics/checkpoint.hpp"
+#include "analytics/duty.hpp"
+#include "analytics/excess_slope.hpp"
+#include "analytics/flow.hpp"
+#include "analytics/leakage.hpp"
+#include "analytics/prognosis.hpp"
+#include "analytics/rated_efficiency.hpp"
+#include "analytics/verdict.hpp"
+#include "analytics/wear_filter.hpp"
+
+namespace slipledger::analytics {
+
+namespace {
+
+constexpr std::uint32_t checkpoint_version = 0x534c0001;  // raise the low half whenever a field is added or moved
+constexpr double hours_per_day = 24.0;
+constexpr double quantile_90 = 1.2815515655446004;
+constexpr std::int32_t drift_days_wanted = 7;
+constexpr double range_change = 0.2;              // in ln dp, ln viscosity: a new operating range
+constexpr double long_gap_h = 3.0;                // without any summary: running hours are estimated by usual duty
+constexpr double impossible_percent = 50.0;       // of running points: the instrument first
+constexpr double step_deadband = 0.05;            // of a ratio limit
+constexpr RuleTiming two_judged_days{.judgements = 2};
+
+double hours(Milliseconds span) { return std::chrono::duration<double, std::ratio<3600>>(span).count(); }
+
+// What a day gathers from its summaries; weights are judged hours.
+struct DayTally {
+    DutyDay duty;
+    double weight = 0.0;
+    double leakage = 0.0;
+    double excess = 0.0;
+    double power = 0.0;
+    double slip = 0.0;
+    double slip_weight = 0.0;
+    double step_ratio = unknown;
+    bool judged = false;
+
+    template <typename Self, typename Io>
+    static void each_field(Self& self, Io& io) {
+        io(self.duty.running_h, self.duty.judged_h, self.weight, self.leakage, self.excess, self.power, self.slip,
+           self.slip_weight, self.step_ratio, self.judged);
+    }
+};
+
+// Means of a summary over its judged regimes, by points.
+struct SummaryMeans {
+    double pressure_rise_bar = unknown;
+    double viscosity_cst = unknown;
+    double temperature_c = unknown;
+    double distance = 0.0;
+};
+
+SummaryMeans means_of(const Summary& summary, const WearFilter& filter) {
+    const Moments& m = summary.judged[summary.judged[1].count > summary.judged[0].count ? 1 : 0];
+    return {.pressure_rise_bar = m.dp_bar, .viscosity_cst = m.viscosity_cst, .temperature_c = m.temperature_c,
+            .distance = filter.distance_from_seen(m)};
+}
+
+bool has_judged(const Summary& summary) { return summary.judged[0].count + summary.judged[1].count > 0; }
+
+// Share of the points of a turning pump that contradict each other, in percent; NaN where it did not turn.
+double percent_impossible(const Summary& summary) {
+    double running = 0.0;
+    for (std::size_t i = 0; i < standing_count; ++i)
+        if (static_cast<Standing>(i) != Standing::stopped) running += summary.counts[i];
+    const double impossible = summary.counts[static_cast<std::size_t>(Standing::impossible)];
+    return running > 0.0 ? 100.0 * impossible / running : unknown;
+}
+
+}  // namespace
+
+struct Course::State {
+    Basis basis = Basis::case_drain;
+    SectionSpec spec;
+    LifeStart life;
+    WearFilter filter;
+    ChangeDetector change;
+    ExcessSlope slope;
+    DutyWindow duty;
+    DayTally today;
+    std::array<AlarmState, rule_count> alarms;
+    double life_running_h = 0.0;
+    double life_judged_h = 0.0;
+    double fed_running_h = 0.0;   // since the end of run-in
+    double fed_judged_h = 0.0;
+    double waiting_running_h = 0.0;  // since the filter was last carried forward
+    Instant carried_to;
+    Instant seen_to;
+    bool seen_any = false;
+    bool carried_any = false;
+    bool above_sound = false;
+    Instant onset;
+    std::int32_t drift_days = 0;
+    std::int32_t last_date = 0;
+    std::vector<AlarmChange> changes;
+
+    template <typename Self, typename Io>
+    static void each_field(Self& self, Io& io) {
+        io(self.life.number, self.life.since, self.filter, self.change, self.slope, self.duty, self.today, self.alarms,
+           self.life_running_h, self.life_judged_h, self.fed_running_h, self.fed_judged_h, self.waiting_running_h,
+           self.carried_to, self.seen_to, self.seen_any, self.carried_any, self.above_sound, self.onset,
+           self.drift_days, self.last_date);
+    }
+
+    AlarmState& alarm(Rule rule) { return alarms[static_cast<std::size_t>(rule)]; }
+    void judge(Rule rule, const RuleJudgement& judgement, const Ladder& ladder, const RuleTiming& timing, Instant at);
+    void judge_summary(const Summary& summary, Instant end);
+    void judge_step(Instant at);
+    void judge_day(const DayVerdict& day, const RatedEfficiency& efficiency);
+    RuleJudgement judge_hours(const DayVerdict& day) const;
+
+    bool settled(double running_h) const;
+    bool learning() const { return fed_judged_h < spec.baseline.least.h; }
+    void count_hours(const Summary& summary);
+    void carry_to(Instant end);
+    void feed(const Summary& summary, Instant end);
+    SummaryVerdict verdict_on(const Summary& summary, double distance) const;
+    void gather(const SummaryVerdict& verdict, const Summary& summary);
+
+    Level allowed() const { return most_urgent_allowed(spec, basis, filter.laminar_span()); }
+    Level most_urgent() const;
+    double share_judged(std::int32_t date) const;
+    std::pair<Level, UnjudgedReason> standing(std::int32_t date) const;
+    HoursInHand hours_in_hand(const RatedEfficiency& efficiency) const;
+    Trend trend() const;
+    DayVerdict day_so_far(const DaySpan& day, const RatedEfficiency& efficiency) const;
+    void stamp(DayVerdict& verdict) const;
+};
+
+void Course::State::judge(Rule rule, const RuleJudgement& judgement, const Ladder& ladder, const RuleTiming& timing,
+                          Instant at) {
+    if (std::isnan(judgement.value)) return;
+    auto change_of_alarm = alarm(rule).judge(rule, judgement, ladder, timing, at);
+    if (!change_of_alarm) return;
+    change_of_alarm->life = life.number;
+    changes.push_back(*change_of_alarm);
+}
+
+void Course::State::judge_summary(const Summary& summary, Instant end) {
+    const RuleLimits& limits = spec.limits;
+    const auto by_ladder = [&](Rule rule, double value, const Ladder& ladder) {
+        judge(rule, judge_ladder(value, ladder), ladder, {ladder.on_delay, ladder.off_delay, 1}, end);
+    };
+    by_ladder(Rule::drain_share, 100.0 * summary.drain_share, limits.drain_share_percent);
+    by_ladder(Rule::over_temperature, summary.highest_temperature_c, limits.over_temperature_c);
+    by_ladder(Rule::case_pressure, summary.highest_case_bar, limits.case_pressure_bar);
+    by_ladder(Rule::inlet_vacuum, -summary.lowest_inlet_bar, limits.inlet_vacuum_bar);
+    const double impossible = filter.impossible(summary) ? 100.0 : percent_impossible(summary);
+    by_ladder(Rule::instrument_suspect, impossible, {.watch = impossible_percent});
+}
+
+void Course::State::judge_step(Instant at) {
+    const Step& step = change.step();
+    const double ratio = std::exp(filter.wear().ln);
+    RuleJudgement judgement{.value = ratio};
+    if (step.active && !step.attributed) {
+        judgement = judge_ladder(ratio, spec.limits.leakage_ratio);
+        judgement.beyond = std::max(judgement.beyond, Level::watch);
+        Ladder left = spec.limits.leakage_ratio;
+        left.deadband = std::max(left.deadband, step_deadband);
+        judgement.within = std::max(judge_ladder(ratio, left).within, Level::watch);
+    }
+    judge(Rule::step_change, capped(judgement, allowed()), spec.limits.leakage_ratio, {}, at);
+}
+
+bool Course::State::settled(double running_h) const {
+    const auto& most = spec.baseline.most;
+    return most && fed_running_h + running_h / 2.0 > most->h;  // by the middle of the summary at hand
+}
+
+void Course::State::count_hours(const Summary& summary) {
+    if (seen_any) {
+        const double gap_h = hours(summary.start - seen_to);
+        const double usual = duty.running_h_per_day(last_date);
+        if (gap_h > long_gap_h && std::isfinite(usual)) waiting_running_h += gap_h * usual / hours_per_day;
+    }
+    seen_any = true;
+    seen_to = summary.start + summary.length;
+    waiting_running_h += summary.running_h;
+    life_running_h += summary.running_h;
+    life_judged_h += summary.judged_h;
+    today.duty.running_h += summary.running_h;
+    today.duty.judged_h += summary.judged_h;
+}
+
+void Course::State::carry_to(Instant end) {
+    if (carried_any) filter.advance(waiting_running_h / hours_per_day, hours(end - carried_to) / hours_per_day);
+    carried_any = true;
+    carried_to = end;
+    waiting_running_h = 0.0;
+}
+
+void Course::State::feed(const Summary& summary, Instant end) {
+    carry_to(end);
+    const bool baseline_settled = settled(summary.running_h);
+    const bool watching = !learning() || baseline_settled;
+    if (watching) {
+        if (means_of(summary, filter).distance > range_change) change.explain(summary.start);
+        if (change.add(filter.surprise(summary), summary.start, life_running_h, filter.wear())) filter.open_wear();
+    }
+    filter.feed(summary, baseline_settled);
+    fed_running_h += summary.running_h;
+    fed_judged_h += summary.judged_h;
+    today.judged = true;
+    if (!watching) return;
+    if (change.follow(filter.wear(), end, life_running_h)) today.step_ratio = std::exp(change.step().ln_size);
+    judge_step(end);
+}
+
+SummaryVerdict Course::State::verdict_on(const Summary& summary, double distance) const {
+    SummaryVerdict verdict;
+    verdict.start = summary.start;
+    if (!filter.primed() || !has_judged(summary) || filter.impossible(summary)) return verdict;
+    const OwnReading own = filter.own_reading(summary);
+    const double reach = quantile_90 * own.ratio_sd;
+    verdict.leakage_ratio = {.value = own.ratio, .low = own.ratio - reach, .high = own.ratio + reach};
+    verdict.filtered_ratio = quoted(filter.wear());
+    verdict.efficiency = rated_efficiency(filter, spec, basis).now;
+    verdict.leakage_lpm = own.leakage_lpm;
+    verdict.excess_lpm = own.leakage_lpm - own.healthy_lpm;
+    verdict.leakage_kw = hydraulic_power_kw(means_of(summary, filter).pressure_rise_bar, own.leakage_lpm);
+    verdict.outside_coverage = distance > range_change;
+    return verdict;
+}
+
+void Course::State::gather(const SummaryVerdict& verdict, const Summary& summary) {
+    if (!std::isfinite(verdict.leakage_lpm)) return;
+    const double weight = summary.judged_h;
+    today.weight += weight;
+    today.leakage += weight * verdict.leakage_lpm;
+    today.excess += weight * verdict.excess_lpm;
+    today.power += weight * verdict.leakage_kw;
+    const SummaryMeans means = means_of(summary, filter);
+    const double slip = slip_coefficient(
+        {.leakage_lpm = verdict.leakage_lpm,
+         .viscosity_pas = means.viscosity_cst * spec.fluid.density_kgm3(means.temperature_c) * 1e-6,
+         .displacement_cm3 = spec.displacement_cm3,
+         .pressure_rise_bar = means.pressure_rise_bar});
+    if (!std::isfinite(slip)) return;
+    today.slip += weight * slip;
+    today.slip_weight += weight;
+}
+
+Level Course::State::most_urgent() const {
+    Level level = Level::unjudged;
+    for (std::size_t i = 0; i < rule_count; ++i)
+        if (decides_level(static_cast<Rule>(i))) level = std::max(level, alarms[i].level());
+    return level;
+}
+
+double Course::State::share_judged(std::int32_t date) const {
+    const DutyDay total = duty.total(date, today.duty);
+    return total.running_h > 0.0 ? total.judged_h / total.running_h : unknown;
+}
+
+std::pair<Level, UnjudgedReason> Course::State::standing(std::int32_t date) const {
+    const Level active = most_urgent();
+    if (active > Level::sound) return {active, UnjudgedReason::none};
+    const UnjudgedReason reason =
+        unjudged_reason({.temperature = spec.has_temperature_sensor,
+                         .shared_drain = spec.shared_drain && basis == Basis::case_drain,
+                         .judged_yet = life_judged_h > 0.0,
+                         .learning_h_left = std::max(spec.baseline.least.h - fed_judged_h, 0.0),
+                         .share_judged = share_judged(date)});
+    return {reason == UnjudgedReason::none ? Level::sound : Level::unjudged, reason};
+}
+
+HoursInHand Course::State::hours_in_hand(const RatedEfficiency& efficiency) const {
+    HoursInHand left;
+    if (!filter.primed() || learning()) return left;
+    const RuleLimits& limits = spec.limits;
+    const double flow =
+        theoretical_flow_lpm(spec.displacement_cm3, spec.reference.speed_rpm, spec.max_stroke_fraction);
+    const double healthy_percent = 100.0 * std::exp(filter.healthy_leakage(spec.reference).ln) / flow;
+    const std::array<std::pair<Rule, double>, 3> ends{
+        {{Rule::leakage_ratio, limits.leakage_ratio.act},
+         {Rule::efficiency, 1.0 + limits.efficiency_points_lost.act / efficiency.points_per_ratio},
+         {Rule::drain_share, limits.drain_share_percent.act / healthy_percent}}};
+    double first = std::numeric_limits<double>::infinity();
+    for (const auto& [rule, ratio] : ends) {
+        if (rule == Rule::drain_share && basis != Basis::case_drain) continue;
+        if (!(ratio > 1.0) || ratio >= first) continue;
+        first = ratio;
+        left.limit = name_of(rule);
+    }
+    if (!std::isfinite(first)) return left;
+    const WearBelief& belief = filter.belief();
+    const PassageQuantiles passage = passage_quantiles({.ln_ratio = belief.mean(ln_wear),
+                                                        .drift_per_day = belief.mean(drift),
+                                                        .ratio_variance = belief.covariance(ln_wear, ln_wear),
+                                                        .drift_variance = belief.covariance(drift, drift),
+                                                        .covariance = belief.covariance(ln_wear, drift),
+                                                        .ln_limit = std::log(first)});
+    const auto finite = [](double value) { return std::isfinite(value) ? value : unknown; };
+    left.low = finite(passage.low_h);
+    if (drift_days < drift_days_wanted && std::exp(belief.mean(ln_wear)) < first) return left;
+    left.mid = finite(passage.mid_h);
+    left.high = finite(passage.high_h);
+    return left;
+}
+
+Trend Course::State::trend() const {
+    Trend trend;
+    trend.established = drift_days >= drift_days_wanted;
+    if (above_sound) trend.onset = onset;
+    if (!filter.primed()) return trend;
+    const WearBelief& belief = filter.belief();
+    const double per_drift = std::exp(belief.mean(ln_wear)) * 1000.0 / hours_per_day;
+    const double reach = quantile_90 * std::sqrt(belief.covariance(drift, drift));
+    trend.per_1000_h = {.value = per_drift * belief.mean(drift), .low = per_drift * (belief.mean(drift) - reach),
+                        .high = per_drift * (belief.mean(drift) + reach)};
+    return trend;
+}
+
+DayVerdict Course::State::day_so_far(const DaySpan& day, const RatedEfficiency& efficiency) const {
+    DayVerdict verdict;
+    verdict.day = day;
+    verdict.life = life.number;
+    verdict.leakage_ratio = quoted(filter.wear());
+    verdict.efficiency = efficiency.now;
+    verdict.efficiency_baseline = efficiency.healthy;
+    verdict.efficiency_at_rated = efficiency.at_rated;
+    if (!change.step().active)
+        verdict.clearance_growth_percent =
+            100.0 * clearance_growth(filter.coefficients(), verdict.leakage_ratio.value);
+    if (today.weight > 0.0) {
+        verdict.leakage_lpm = today.leakage / today.weight;
+        verdict.excess_lpm = today.excess / today.weight;
+        verdict.leakage_kw = today.power / today.weight;
+    }
+    if (today.slip_weight > 0.0) verdict.slip_coefficient = today.slip / today.slip_weight;
+    if (filter.primed()) verdict.zero_lpm = filter.belief().mean(meter_zero);
+    verdict.hours_in_hand = hours_in_hand(efficiency);
+    verdict.step_ratio = today.step_ratio;
+    verdict.running_h = today.duty.running_h;
+    verdict.judged_h = today.duty.judged_h;
+    verdict.life_running_h = life_running_h;
+    verdict.life_judged_h = life_judged_h;
+    verdict.learning_h_left = std::max(spec.baseline.least.h - fed_judged_h, 0.0);
+    verdict.share_judged_30d = share_judged(day.date);
+    return verdict;
+}
+
+// What follows from the alarms as they stand: level, reason, trend and cause.
+void Course::State::stamp(DayVerdict& verdict) const {
+    std::tie(verdict.level, verdict.reason) = standing(verdict.day.date);
+    verdict.trend = trend();
+    const Cause cause = simplest_cause(
+        {.level = verdict.level,
+         .step = change.step().active,
+         .explained = change.step().attributed,
+         .instrument_suspect = alarms[static_cast<std::size_t>(Rule::instrument_suspect)].level() > Level::sound,
+         .scales_with_leakage = verdict.level > Level::sound && slope.scales_with_leakage()});
+    verdict.cause = cause.kind;
+    verdict.cause_weight = cause.weight;
+}
+
+// `plan` once the 10 % quantile, as a date, falls before the spare can be here or before the second-next planned stop.
+RuleJudgement Course::State::judge_hours(const DayVerdict& day) const {
+    RuleJudgement judgement{.value = day.hours_in_hand.low};
+    const double usual = duty.running_h_per_day(day.day.date);
+    const double per_day = std::isfinite(spec.duty_h_per_week) ? spec.duty_h_per_week / 7.0 : usual;
+    if (drift_days < drift_days_wanted || !(per_day > 0.0)) return judgement;
+    const double days_left = day.hours_in_hand.low / per_day;
+    double wanted = spec.spare_lead_days;
+    if (spec.second_next_planned_stop)
+        wanted = std::fmax(wanted, hours(*spec.second_next_planned_stop - day.day.end) / hours_per_day);
+    if (days_left < wanted) judgement.beyond = judgement.within = Level::plan;
+    return judgement;
+}
+
+void Course::State::judge_day(const DayVerdict& day, const RatedEfficiency& efficiency) {
+    const RuleLimits& limits = spec.limits;
+    const auto daily = [&](Rule rule, const RuleJudgement& judgement, const Ladder& ladder) {
+        RuleTiming timing = two_judged_days;
+        timing.on_delay = ladder.on_delay;
+        timing.off_delay = ladder.off_delay;
+        judge(rule, capped(judgement, allowed()), ladder, timing, day.day.end);
+    };
+    daily(Rule::leakage_ratio, judge_ratio(day.leakage_ratio, limits.leakage_ratio), limits.leakage_ratio);
+    daily(Rule::efficiency, judge_points_lost(efficiency.points_lost, limits.efficiency_points_lost),
+          limits.efficiency_points_lost);
+    daily(Rule::hours_in_hand, judge_hours(day), {});
+}
+
+Course::Course(Basis basis) : state_(std::make_unique<State>()) { state_->basis = basis; }
+Course::~Course() = default;
+Course::Course(Course&&) noexcept = default;
+Course& Course::operator=(Course&&) noexcept = default;
+
+void Course::begin_life(const LifeStart& life, const SectionSpec& spec) {
+    auto next = std::make_unique<State>();
+    for (std::size_t i = 0; i < rule_count; ++i) {
+        auto ended = state_->alarms[i].end(static_cast<Rule>(i), life.since);
+        if (!ended) continue;
+        ended->life = state_->life.number;
+        state_->changes.push_back(*ended);
+    }
+    next->changes = std::move(state_->changes);
+    next->duty = state_->duty;
+    next->today.duty = state_->today.duty;
+    next->last_date = state_->last_date;
+    next->basis = state_->basis;
+    next->spec = spec;
+    next->life = life;
+    next->filter.begin(spec, next->basis);
+    state_ = std::move(next);
+}
+
+void Course::change_facts(Instant at, const SectionSpec& spec) {
+    state_->spec = spec;
+    state_->filter.adopt(spec);
+    state_->change.explain(at);
+}
+
+SummaryVerdict Course::take(const Summary& summary) {
+    State& s = *state_;
+    const Instant end = summary.start + summary.length;
+    const bool running_in = s.life_running_h < s.spec.baseline.run_in.h;
+    const bool fit = has_judged(summary) && !s.filter.impossible(summary);
+    const double distance = fit ? means_of(summary, s.filter).distance : 0.0;
+    s.count_hours(summary);
+    s.judge_summary(summary, end);
+    if (fit && !running_in) s.feed(summary, end);
+    SummaryVerdict verdict = s.verdict_on(summary, distance);
+    s.gather(verdict, summary);
+    if (fit && !running_in) s.slope.add({.leakage_lpm = verdict.leakage_lpm,
+                                         .healthy_lpm = verdict.leakage_lpm - verdict.excess_lpm});
+    std::tie(verdict.level, verdict.reason) = s.standing(s.last_date);
+    return verdict;
+}
+
+DayVerdict Course::quote(const DaySpan& day) const {
+    DayVerdict verdict = state_->day_so_far(day, rated_efficiency(state_->filter, state_->spec, state_->basis));
+    state_->stamp(verdict);
+    return verdict;
+}
+
+DayVerdict Course::finish_day(const DaySpan& day) {
+    State& s = *state_;
+    const RatedEfficiency efficiency = rated_efficiency(s.filter, s.spec, s.basis);
+    const bool judged = s.today.judged && !s.learning();
+    if (judged) {
+        const WearBelief& belief = s.filter.belief();
+        const double fastest = belief.mean(drift) - quantile_90 * std::sqrt(belief.covariance(drift, drift));
+        s.drift_days = fastest > 0.0 ? s.drift_days + 1 : 0;
+    }
+    DayVerdict verdict = s.day_so_far(day, efficiency);
+    if (judged) s.judge_day(verdict, efficiency);
+    const bool above = s.most_urgent() > Level::sound;
+    if (above && !s.above_sound) s.onset = day.begin;
+    s.above_sound = above;
+    s.stamp(verdict);
+    s.duty.add(day.date, s.today.duty);
+    s.last_date = day.date;
+    s.today = DayTally{};
+    return verdict;
+}
+
+std::vector<AlarmChange> Course::drain_alarm_changes() { return std::exchange(state_->changes, {}); }
+
+std::vector<std::byte> Course::checkpoint() const {
+    CheckpointWriter writer;
+    writer(checkpoint_version, state_->basis, *state_);
+    return writer.take();
+}
+
+std::optional<Course> Course::restore(std::span<const std::byte> bytes, const SectionSpec& spec) {
+    std::uint32_t version = 0;
+    Course course(Basis::case_drain);
+    CheckpointReader reader(bytes);
+    reader(version);
+    if (version != checkpoint_version) return std::nullopt;
+    reader(course.state_->basis, *course.state_);
+    if (!reader.complete()) return std::nullopt;
+    course.state_->spec = spec;
+    course.state_->filter.attach(spec, course.state_->basis);
+    return course;
+}
+
+}  // namespace slipledger::analytics

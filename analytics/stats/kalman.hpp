@@ -1,0 +1,77 @@
+// One step of a Kalman filter, for any small fixed number of states: what the wear filter is built on, and what is checked
+// against other people's software on its own (tests/reference/kalman.py). The covariance is updated in Joseph's form,
+// which stays symmetric and positive for any gain: also for one that was bounded, or in which states are only considered.
+// Header only: it is a template.
+// Source: B. D. O. Anderson and J. B. Moore, Optimal Filtering (1979); J. Durbin and S. J. Koopman, Time Series Analysis
+// by State Space Methods (2012) (from memory).
+#pragma once
+
+#include <Eigen/Core>
+
+namespace slipledger::analytics::stats {
+
+template <int N>
+using StateVector = Eigen::Matrix<double, N, 1>;
+template <int N>
+using StateMatrix = Eigen::Matrix<double, N, N>;
+
+// What is believed of N states: mean and covariance.
+template <int N>
+struct Belief {
+    StateVector<N> mean = StateVector<N>::Zero();
+    StateMatrix<N> covariance = StateMatrix<N>::Zero();
+};
+
+// One number seen, linear in the states: seen = design . state + noise of this variance.
+template <int N>
+struct Sighting {
+    StateVector<N> design = StateVector<N>::Zero();
+    double innovation = 0.0;  // seen less what was expected
+    double variance = 0.0;    // of the noise; > 0
+};
+
+// Carries a belief over a step of time: mean' = F mean, covariance' = F P F' + Q.
+//
+//   F   motion   N x N
+//   Q   noise    N x N, symmetric, positive or zero
+//
+// Example: level 1 and slope 2 with F = [1 1; 0 1] -> level 3, slope 2.
+// Source: Anderson and Moore 1979.
+template <int N>
+void carry(Belief<N>& belief, const StateMatrix<N>& motion, const StateMatrix<N>& noise) {
+    belief.mean = motion * belief.mean;
+    const StateMatrix<N> moved = motion * belief.covariance;
+    belief.covariance.noalias() = moved * motion.transpose();
+    belief.covariance += noise;
+}
+
+// Variance of an innovation: h' P h + R.
+// Returns the square of the unit of what is seen. Source: Anderson and Moore 1979.
+template <int N>
+double innovation_variance(const Belief<N>& belief, const Sighting<N>& seen) {
+    return seen.design.dot(belief.covariance * seen.design) + seen.variance;
+}
+
+// The gain that makes the variance least: P h / (h' P h + R). Source: Anderson and Moore 1979.
+template <int N>
+StateVector<N> best_gain(const Belief<N>& belief, const Sighting<N>& seen) {
+    const StateVector<N> spread = belief.covariance * seen.design;
+    return spread / (seen.design.dot(spread) + seen.variance);
+}
+
+// Takes a sighting in with any gain: mean' = mean + K innovation, P' = (I - K h') P (I - K h')' + K R K'. An entry of K set
+// to zero leaves its state where it is and still counts what is not known of it (Schmidt's consider filter).
+// Example: one state 0 +- 1, seen 1 with variance 1, K = 1/2 -> 0.5, variance 0.5.
+// Source: Anderson and Moore 1979 (Joseph's form).
+template <int N>
+void take_in(Belief<N>& belief, const Sighting<N>& seen, const StateVector<N>& gain) {
+    belief.mean += gain * seen.innovation;
+    const StateVector<N> spread = belief.covariance * seen.design;
+    const StateMatrix<N> left = belief.covariance - gain * spread.transpose();
+    const StateVector<N> left_spread = left * seen.design;
+    StateMatrix<N> both = left - left_spread * gain.transpose();
+    both += (gain * seen.variance) * gain.transpose();
+    belief.covariance = 0.5 * (both + both.transpose());
+}
+
+}  // namespace slipledger::analytics::stats

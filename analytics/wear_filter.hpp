@@ -1,0 +1,160 @@
+// Baseline and wear of one section estimated together, summary by summary. A baseline fitted once and frozen calls the
+// first summer wear; here what cannot be told apart widens the range instead.
+//
+//   leakage seen = dV n / 1000 + zero + k + exp(x + u) (a f1 + b f2 + c f3) + noise
+//
+// with f1..f3 the feature means of the summary in units of the reference point, k only while compensating. An extended
+// Kalman filter in Joseph's form, the mean sighting relinearised while the coefficients are still loose. Use `Course`, which
+// ties it to steps, levels and days; this class knows neither days nor limits.
+// Source: method.md, 5; Anderson and Moore 1979; Durbin and Koopman 2012 (from memory).
+#pragma once
+
+#include <limits>
+
+#include "analytics/section_spec.hpp"
+#include "analytics/summary.hpp"
+#include "analytics/wear_prior.hpp"
+
+namespace slipledger::analytics {
+
+// ln value and how well it is known: quoted as exp(ln), exp(ln -+ 1.2816 sd).
+struct LogEstimate {
+    double ln = unknown;
+    double sd = unknown;
+};
+
+// What the summary at hand says by itself, with the coefficients known at its end.
+struct OwnReading {
+    double leakage_lpm = unknown;   // wear-dependent part of what was seen
+    double healthy_lpm = unknown;   // what it would be at ratio 1, at the same operating points
+    double ratio = unknown;
+    double ratio_sd = unknown;
+};
+
+// Lowest and highest yet seen. Natural logarithms; empty while low > high.
+struct SeenSpan {
+    double low = std::numeric_limits<double>::infinity();
+    double high = -std::numeric_limits<double>::infinity();
+
+    void widen(double ln_low, double ln_high) {
+        if (ln_low < low) low = ln_low;
+        if (ln_high > high) high = ln_high;
+    }
+    double width() const { return high > low ? high - low : 0.0; }
+    double distance(double ln) const { return ln < low ? low - ln : ln > high ? ln - high : 0.0; }
+};
+
+// Threads: one at a time.
+class WearFilter {
+public:
+    // A new life: forgets all. Nothing is believed until the first summary is fed.
+    void begin(const SectionSpec& spec, Basis basis);
+    // Facts of the same life changed: coefficients are carried to the new reference point, oil and name plate.
+    void adopt(const SectionSpec& spec);
+
+    bool primed() const { return primed_; }
+
+    // What no pump can do: leakage above theoretical flow or far below nothing, features that are no numbers.
+    //
+    // Not computed: a plausibility check.
+    bool impossible(const Summary& summary) const;
+
+    // Motion of wear, drift and disturbance:
+    //
+    //   x' = x + v d,   v' = v,   u' = phi u,   phi = exp(-c / 10)
+    //
+    //   d  running_days   24 running hours   c  calendar_days
+    //
+    // with variance 0.004^2 d + 0.0006^2 d^3/3 on x, 0.0006^2 d on v, 0.0006^2 d^2/2 between them, 0.03^2 (1 - phi^2) on u.
+    // Example: v = 0.001, 10 running days -> x grows by 0.01.
+    // Source: method.md, 5 (integrated random walk: Durbin and Koopman 2012).
+    void advance(double running_days, double calendar_days);
+
+    // How far a summary's mean leakage is from what is expected, in standard deviations, before it is fed; of the judged
+    // regime with most points. NaN before the first feed and where nothing was judged.
+    //
+    // Returns a pure number, about N(0, 1) while nothing jumps.
+    // Source: Anderson and Moore 1979 (standardised innovation).
+    double surprise(const Summary& summary) const;
+
+    // Takes a summary in: mean of each judged regime, contrasts within it, and the meter's zero at a stop. Innovations
+    // beyond 2.5 standard deviations weigh less (Huber). With `settled` a, b, c, dV and zero are only considered.
+    // Source: method.md, 5.
+    void feed(const Summary& summary, bool settled);
+
+    // A jump was found: lets x go where the next summaries say (variance 0.35^2 more).
+    // Source: method.md, 5.
+    void open_wear();
+
+    // x with its standard deviation: ln of the leakage ratio. NaN before the first feed.
+    // Source: method.md, 5.
+    LogEstimate wear() const;
+
+    // Drift of x per running day, mean and standard deviation, and its covariance with x.
+    // Not computed: reads the state.
+    const WearBelief& belief() const { return belief_; }
+
+    // The summary's own ratio: (leakage seen - dV n/1000 - zero - k) / (a f1 + b f2 + c f3), regimes by their points.
+    // Source: method.md, 5.
+    OwnReading own_reading(const Summary& summary) const;
+
+    // ln of healthy leakage a f1 + b f2 + c f3 at a duty point, and how well it is known.
+    // Source: method.md, 3 and 5.
+    LogEstimate healthy_leakage(const DutyPoint& at) const;
+
+    // The same times exp(x): leakage now, without the slow disturbance.
+    // Source: method.md, 3 and 5.
+    LogEstimate worn_leakage(const DutyPoint& at) const;
+
+    // Healthy coefficients a, b, c at the reference point; NaN before the first feed. Not computed: exponentials of the state.
+    LeakageCoefficients coefficients() const;
+
+    // Distance of a summary or a duty point from what was seen in ln dp and ln viscosity; 0 inside.
+    // Returns a pure number. Source: method.md, 5 (after Kennedy and O'Hagan 2001).
+    double distance_from_seen(const Moments& moments) const;
+    double distance_from_seen(const DutyPoint& at) const;
+
+    // Factor by which dp/mu varied over what was fed. Returns a pure number, 1 before anything.
+    // Source: method.md, 3.
+    double laminar_span() const;
+
+    template <typename Self, typename Io>
+    static void each_field(Self& self, Io& io) {
+        io(self.belief_.mean, self.belief_.covariance, self.primed_, self.plate_cm3_, self.reference_.pressure_rise_bar,
+           self.reference_.viscosity_pas, self.reference_.density_kgm3, self.reference_.speed_rpm);
+        for (auto* span : {&self.pressure_, &self.viscosity_, &self.laminar_, &self.speed_}) io(span->low, span->high);
+    }
+    // After a restore: what follows from the plant file. Not computed: bookkeeping.
+    void attach(const SectionSpec& spec, Basis basis);
+
+private:
+    using Sighting = stats::Sighting<wear_states>;
+    struct Expected {
+        WearVector design;
+        double leakage_lpm;  // all that is expected to be seen
+        double worn_lpm;     // its wear-dependent part
+    };
+    Expected expect(const WearVector& mean, const Moments& moments, bool compensating) const;
+    double noise_variance(const Moments& moments, double worn_lpm) const;
+    void prime(const Summary& summary);
+    void feed_mean(const Moments& moments, bool compensating, bool settled);
+    void feed_contrasts(const Moments& moments, bool settled);
+    void feed_stop(const Summary& summary, bool settled);
+    void take(const Sighting& seen, bool settled);
+    WearVector held(WearVector gain, bool settled) const;
+    void remember(const Moments& moments);
+    LogEstimate leakage_at(const DutyPoint& at, bool worn) const;
+
+    WearBelief belief_;
+    bool primed_ = false;
+    double plate_cm3_ = unknown;
+    LeakageState reference_;
+    SeenSpan pressure_;
+    SeenSpan viscosity_;
+    SeenSpan laminar_;
+    SeenSpan speed_;
+    SectionSpec spec_;
+    Basis basis_ = Basis::case_drain;
+};
+
+}  // namespace slipledger::analytics
