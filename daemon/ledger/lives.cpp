@@ -8,6 +8,8 @@ namespace {
 
 using nlohmann::json;
 
+constexpr std::chrono::days new_when_watched_within{7};
+
 json body_of(const Event& event) {
     json body = json::parse(event.body, nullptr, false);
     return body.is_object() ? body : json::object();
@@ -82,6 +84,12 @@ std::vector<FactsFrom> facts_of(std::span<const Event> events) {
         facts.push_back(std::move(entry));
     }
     return facts;
+}
+
+bool watched_from_new(const Life& life, std::span<const FactsFrom> facts, std::optional<Instant> oldest) {
+    if (life.since) return true;
+    if (facts.empty() || !facts.front().since || !oldest) return false;
+    return *oldest >= *facts.front().since && *oldest - *facts.front().since <= new_when_watched_within;
 }
 
 std::optional<Event> plant_change(const config::Pump& pump, std::span<const Event> events,

@@ -44,6 +44,10 @@ struct FactsFrom {
 // was never seen.
 std::vector<FactsFrom> facts_of(std::span<const Event> events);
 
+// Whether the part was new when watching it began, so that its ratio is "what it leaked when new": it was fitted by a
+// `replaced` event, or the plant file gave a `since` at most a week before the pump's first reading, `oldest`.
+bool watched_from_new(const Life& life, std::span<const FactsFrom> facts, std::optional<Instant> oldest);
+
 // The event to store when a daemon or command opens the ledger with this plant file; none where it says what the ledger
 // holds. The first sight of a pump holds from the beginning of time. A change holds from the pump's `since` where that was
 // edited with it, else from the newest reading; `now` is the wall clock.

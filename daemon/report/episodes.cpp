@@ -1,13 +1,12 @@
 #include "daemon/report/episodes.hpp"
 
-#include <date/date.h>
 #include <fmt/format.h>
 
 #include <algorithm>
 #include <nlohmann/json.hpp>
-#include <sstream>
 
 #include "daemon/report/fingerprint.hpp"
+#include "daemon/report/when.hpp"
 
 namespace slipledger::report {
 namespace {
@@ -27,13 +26,6 @@ struct Act {
     std::string why;
     std::optional<Instant> until;
 };
-
-std::optional<Instant> instant_of(const std::string& text) {
-    std::istringstream in(text);
-    Instant at;
-    in >> date::parse("%FT%TZ", at);
-    return in.fail() ? std::nullopt : std::optional(at);
-}
 
 std::string text_of(const nlohmann::json& body, const char* key) {
     const auto found = body.find(key);

@@ -4,6 +4,7 @@
 #include <date/tz.h>
 
 #include <chrono>
+#include <sstream>
 
 namespace slipledger::report {
 
@@ -19,6 +20,13 @@ date::zoned_time<std::chrono::minutes> in_zone(analytics::Instant at, const std:
 std::string rfc3339(analytics::Instant at) {
     const auto second = std::chrono::floor<std::chrono::seconds>(at);
     return at == second ? date::format("%FT%TZ", second) : date::format("%FT%TZ", at);
+}
+
+std::optional<analytics::Instant> instant_of(const std::string& text) {
+    std::istringstream in(text);
+    analytics::Instant at;
+    in >> date::parse("%FT%TZ", at);
+    return in.fail() ? std::nullopt : std::optional(at);
 }
 
 std::string local_minute(analytics::Instant at, const std::string& zone) {

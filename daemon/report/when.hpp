@@ -2,6 +2,7 @@
 #pragma once
 
 #include <cstdint>
+#include <optional>
 #include <string>
 #include <string_view>
 
@@ -11,6 +12,9 @@ namespace slipledger::report {
 
 // "2026-03-01T06:00:00Z"; milliseconds only where there are some.
 std::string rfc3339(analytics::Instant at);
+
+// The inverse, of UTC times with Z; nullopt where the text is no such time.
+std::optional<analytics::Instant> instant_of(const std::string& text);
 
 // "2026-03-01 07:00 CET". `zone` must be known to the tz database.
 std::string local_minute(analytics::Instant at, const std::string& zone);

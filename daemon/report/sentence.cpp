@@ -1,0 +1,145 @@
+#include "daemon/report/sentence.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+
+namespace slipledger::report {
+namespace {
+
+using analytics::CauseKind;
+using analytics::DayVerdict;
+using analytics::Level;
+using analytics::Ranged;
+using analytics::UnjudgedReason;
+
+// As precise as a ratio deserves: hundredths near 1, where they tell sound from worn, tenths beyond.
+std::string ratio(double value) {
+    return value < 1.5 ? fmt::format("{:.2f}", value) : fmt::format("{:.1f}", value);
+}
+
+std::string range(const Ranged& ranged) {
+    const int digits = ranged.value < 1.5 ? 2 : 1;
+    return fmt::format("{:.{}f} to {:.{}f}", ranged.low, digits, ranged.high, digits);
+}
+
+// Two significant digits; hours in hand are never better known.
+std::string hours(double value) {
+    if (value < 1.0) return "0";
+    const double unit = std::pow(10.0, std::floor(std::log10(value)) - 1.0);
+    return fmt::format("{:.0f}", unit < 1.0 ? std::round(value) : std::round(value / unit) * unit);
+}
+
+std::string subject(const SentenceFacts& facts) {
+    return facts.only_section ? "The pump" : "Section " + facts.section;
+}
+
+std::string limit_name(const SentenceFacts& facts, std::string_view rule) {
+    if (rule == "efficiency") return fmt::format("its limit of {:g} points of efficiency lost", facts.act_points_lost);
+    if (rule == "drain-share") return fmt::format("its limit of {:g} % drain share", facts.act_drain_share_percent);
+    return fmt::format("its limit of {:g}", facts.act_ratio);
+}
+
+std::string unjudged(const SentenceFacts& facts) {
+    const DayVerdict& day = facts.verdict;
+    switch (day.reason) {
+        case UnjudgedReason::learning: {
+            const double judged = std::max(0.0, facts.least_judged_h - day.learning_h_left);
+            return fmt::format("{} is still being learned: {:.0f} of {:g} judged running hours.", subject(facts), judged,
+                               facts.least_judged_h);
+        }
+        case UnjudgedReason::seldom_judged:
+            if (!std::isfinite(day.share_judged_30d))
+                return subject(facts) + " is not judged: too few of its running hours of the last 30 days could be.";
+            return fmt::format("{} is not judged: only {:.0f} % of its running hours of the last 30 days could be.",
+                               subject(facts), 100.0 * day.share_judged_30d);
+        case UnjudgedReason::shared_drain:
+            return subject(facts) + " is not judged by itself: one drain meter serves it and others.";
+        case UnjudgedReason::no_basis:
+            return subject(facts) + " is not judged: neither a case drain flow nor a delivery flow comes in for it.";
+        default: return subject(facts) + " is not judged yet: no steady operating point under load has come in.";
+    }
+}
+
+std::string leaks(const SentenceFacts& facts) {
+    const Ranged& now = facts.verdict.leakage_ratio;
+    if (!std::isfinite(now.value))
+        return fmt::format("{} is {}; its leakage ratio is not known", subject(facts), name_of(facts.verdict.level));
+    const std::string same = facts.temperature_known ? "at the same pressure, speed and oil"
+                                                     : "at the same pressure and speed, oil temperature unknown";
+    const std::string seen = facts.basis == analytics::Basis::delivery ? ", by its delivery flow" : "";
+    const bool as_before = facts.verdict.level <= Level::sound && now.low <= 1.0 && now.high >= 1.0;
+    if (as_before)
+        return fmt::format("{} leaks what it did {} (ratio {}, {}), {}{}", subject(facts), facts.compared_with,
+                           ratio(now.value), range(now), same, seen);
+    return fmt::format("{} leaks {} times ({}) what it did {}, {}{}", subject(facts), ratio(now.value), range(now),
+                       facts.compared_with, same, seen);
+}
+
+std::string in_hand(const SentenceFacts& facts) {
+    const DayVerdict& day = facts.verdict;
+    const analytics::HoursInHand& left = day.hours_in_hand;
+    if (day.leakage_ratio.value > facts.act_ratio) return "; that is beyond " + limit_name(facts, "leakage-ratio");
+    if (std::isfinite(left.mid))
+        return fmt::format("; about {} running hours to {}", hours(left.mid), limit_name(facts, left.limit));
+    if (std::isfinite(left.low) && day.trend.established)
+        return fmt::format("; at least {} running hours to {}", hours(left.low), limit_name(facts, left.limit));
+    if (std::isfinite(left.low))
+        return fmt::format("; no wear trend, at least {} running hours in hand", hours(left.low));
+    return {};
+}
+
+std::string step(const SentenceFacts& facts) {
+    const double ratio_of_step = facts.verdict.step_ratio;
+    if (!std::isfinite(ratio_of_step)) return {};
+    return fmt::format(" It rose at one step, {} times.", ratio(ratio_of_step));
+}
+
+std::string part(const SentenceFacts& facts) { return std::string(replaceable_part(facts.type)); }
+
+std::string doubt(CauseKind cause) {
+    switch (cause) {
+        case CauseKind::instrument: return "Check the instruments first: the readings contradict each other.";
+        case CauseKind::wear_or_instrument:
+            return "Wear or instrument, not yet separable: check the flow meter with a reference test.";
+        case CauseKind::oil_or_operation: return "Check oil and settings first: the change came with one of them.";
+        default: return {};
+    }
+}
+
+std::string wear_action(const SentenceFacts& facts) {
+    switch (facts.verdict.level) {
+        case Level::watch: return "Watch it; nothing to order yet.";
+        case Level::plan:
+            return facts.spare_in_stock ? "Plan to fit the " + part(facts) + " in stock."
+                                        : "Order a " + part(facts) + ".";
+        case Level::act:
+            return facts.spare_in_stock ? "Replace the " + part(facts) + " at the next stop; one is in stock."
+                                        : "Order a " + part(facts) + " now and replace it at the next stop.";
+        default: return "Nothing to do.";
+    }
+}
+
+}  // namespace
+
+std::string what_to_do(const SentenceFacts& facts) {
+    if (!facts.silent_since.empty()) return "Check its feed.";
+    if (facts.verdict.level == Level::unjudged) {
+        const bool sensors = facts.verdict.reason == UnjudgedReason::no_basis ||
+                             facts.verdict.reason == UnjudgedReason::shared_drain;
+        return sensors ? "Fit a flow meter of its own to have it judged." : "Keep its readings coming.";
+    }
+    const std::string first = doubt(facts.verdict.cause);
+    if (facts.verdict.level == Level::sound || first.empty()) return wear_action(facts);
+    return first;
+}
+
+std::string sentence(const SentenceFacts& facts) {
+    if (!facts.silent_since.empty())
+        return fmt::format("{} has sent no readings since {}. {}", subject(facts), facts.silent_since, what_to_do(facts));
+    if (facts.verdict.level == Level::unjudged) return unjudged(facts) + " " + what_to_do(facts);
+    return leaks(facts) + in_hand(facts) + "." + step(facts) + " " + what_to_do(facts);
+}
+
+}  // namespace slipledger::report
