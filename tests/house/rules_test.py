@@ -43,6 +43,8 @@ BREACHES = [
     ("header-opens-with-why", "config/planted.hpp", "#pragma once\n", 1),
     ("physics-explained", "analytics/planted.hpp",
      "// Why.\n#pragma once\n\n// Power.\n//\n// Returns kW.\ndouble power_kw(double x);\n", 7),
+    ("physics-explained", "analytics/planted.hpp",
+     "// Why.\n#pragma once\n\n// Power. Returns it.\n// Source: from memory.\ndouble power_kw(double x);\n", 6),
     ("no-vague-names", "daemon/string_utils.hpp", "// Why.\n", 1),
     ("no-forbidden-words", "daemon/planted.cpp", "// see /wor" + "k/notes\n", 1),
     ("no-forbidden-words", "schema/planted.md", "Keys.\n\nTO" + "DO: the rest\n", 3),

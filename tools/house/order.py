@@ -9,6 +9,10 @@ VAGUE = re.compile(r"(^|_|-)(utils?|common|helpers?|misc|stuff)(_|-|\.|$)")
 # Written so that this file does not contain what it looks for.
 FORBIDDEN = re.compile(r"(?<![\w.])/wor[k]/|/tmp/buil[d]|/roo[t]/|/home/[a-z]+/|\bTOD[O]\b|\bFIXM[E]\b|\bXX[X]\b")
 
+# What may stand behind `Returns`: a canonical unit, or a word for a number without one.
+UNIT = re.compile(r"\b(bar|L/min|rpm|degC|K|mm2/s|cm3/rev|cm3|m3|kW|h|s|ms|kg/m3|Pa s|GPa|years?|days?|unit|per"
+                  r"|fraction|ratio|number|share|probability|logarithm)\b|%")
+
 
 def twins_in_analytics(tree):
     """Each .cpp of analytics/ has its header beside it and its test in tests/analytics/."""
@@ -60,16 +64,16 @@ def header_opens_with_why(tree):
 
 
 def physics_explained(tree):
-    """Every public function of analytics/ that returns double says `Returns` and `Source:` in its comment."""
+    """Every public function of analytics/ returning double says `Returns` with a unit, and `Source:`, in its comment."""
     for path in tree.under(("analytics",), ".hpp"):
         for function in tree.declared(path).functions:
-            if function.result not in ("double", "std::optional<double>") or not function.public:
+            if function.result not in ("double", "std::optional<double>") or not references.computes(function):
                 continue
-            if not references.computes(function):
-                continue
-            for word in ("Returns", "Source:"):
-                if word not in function.comment:
-                    yield Finding(path, function.line, f"{function.name} is explained without `{word}`",
+            returns = re.search(r"\bReturns\b(.*?)(\.\s|\n\s*\n|$)", function.comment, re.S)
+            for word, said in (("Returns", returns), ("Source:", "Source:" in function.comment),
+                               ("the unit it returns", not returns or UNIT.search(returns.group(1)))):
+                if not said:
+                    yield Finding(path, function.line, f"{function.name} is explained without {word}",
                                   "the fixed form of a physical function's comment")
 
 
