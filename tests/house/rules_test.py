@@ -2,6 +2,7 @@
 """Every house rule can fail: a small breach planted in a copy of the checkout is found, by file and line; and what only
 looks like a breach is let through."""
 import os
+import re
 import shutil
 import subprocess
 import tempfile
@@ -80,10 +81,15 @@ IMPURE = {
 PURE = "#include <cmath>\n#include <vector>\ndouble f(std::vector<double> v) { v.push_back(1); return std::exp(v[0]); }\n"
 
 
-def check(root, rule, *more):
-    """(exit code, output) of the checker with one rule."""
-    done = subprocess.run([CHECK, "--root", root, "--only", rule, *more], text=True, capture_output=True)
+def check(*arguments):
+    """(exit code, output) of the checker."""
+    done = subprocess.run([CHECK, *arguments], text=True, capture_output=True)
     return done.returncode, done.stdout + done.stderr
+
+
+def named_apart(path, number):
+    """The path with a number in it, so that many can be planted at once; CMakeLists.txt keeps its name."""
+    return path.replace("planted", f"planted{number}", 1).replace("/string_", f"/string{number}_")
 
 
 class HouseRules(unittest.TestCase):
@@ -91,62 +97,54 @@ class HouseRules(unittest.TestCase):
     def setUpClass(cls):
         cls.folder = tempfile.TemporaryDirectory()
         cls.copy = Path(cls.folder.name) / "copy"
-        unwanted = shutil.ignore_patterns("build", ".git", "__pycache__")
-        shutil.copytree(ROOT, cls.copy, ignore=unwanted, symlinks=True)
+        shutil.copytree(ROOT, cls.copy, ignore=shutil.ignore_patterns("build", ".git", "__pycache__"), symlinks=True)
+        cls.breaches = [(rule, named_apart(path, number), text, line)
+                        for number, (rule, path, text, line) in enumerate(BREACHES, 100)]
+        cls.innocent = [(rule, named_apart(path, number), text)
+                        for number, (rule, path, text) in enumerate(INNOCENT, 200)]
+        for _, path, text, *_ in cls.breaches + cls.innocent:
+            (cls.copy / path).parent.mkdir(parents=True, exist_ok=True)
+            (cls.copy / path).write_text(text)
+        cls.code, cls.output = check("--root", cls.copy)
 
     @classmethod
     def tearDownClass(cls):
         cls.folder.cleanup()
 
-    def planted(self, rule, path, text):
-        """What the checker says with the text planted; the copy is clean again afterwards."""
-        target = self.copy / path
-        made = [folder for folder in target.parents if not folder.exists()]
-        target.parent.mkdir(parents=True, exist_ok=True)
-        target.write_text(text)
-        try:
-            return check(self.copy, rule)
-        finally:
-            target.unlink()
-            for folder in made:
-                folder.rmdir()
-
     def test_a_planted_breach_is_found_with_its_line(self):
-        for rule, path, text, line in BREACHES:
+        self.assertEqual(self.code, 1)
+        for rule, path, _, line in self.breaches:
             with self.subTest(rule=rule, path=path):
-                code, output = self.planted(rule, path, text)
-                self.assertEqual(code, 1, output)
-                self.assertIn(f"{path}:{line}: ", output)
-                self.assertIn("wanted: ", output)
+                self.assertRegex(self.output, rf"(?m)^{re.escape(path)}:{line}: .+\n    wanted: .+ \({rule}\)$")
 
     def test_what_only_looks_like_a_breach_is_let_through(self):
-        for rule, path, text in INNOCENT:
+        for rule, path, _ in self.innocent:
             with self.subTest(rule=rule, path=path):
-                self.assertNotIn(path + ":", self.planted(rule, path, text)[1])
+                self.assertNotRegex(self.output, rf"(?m)^{re.escape(path)}:\d+: .+\n    wanted: .+ \({rule}\)$")
 
     def test_every_rule_has_a_planted_breach(self):
-        listed = subprocess.run([CHECK, "--list"], text=True, capture_output=True, check=True).stdout
+        listed = check("--list")[1]
         rules = {line for line in listed.split("\n") if line and not line.startswith(" ")}
         self.assertEqual(rules - {rule for rule, *_ in BREACHES}, {"analytics-symbols"})
 
-    def built(self, text):
-        """A static library made of the text."""
+    def check_library(self, text):
+        """What the checker says of a static library made of the text."""
         folder = Path(tempfile.mkdtemp(dir=self.folder.name))
         (folder / "planted.cpp").write_text(text)
         compiler = os.environ.get("CXX", "c++")
         subprocess.run([compiler, "-std=c++20", "-O1", "-c", "planted.cpp", "-o", "planted.o"], cwd=folder, check=True)
         subprocess.run(["ar", "rc", "planted.a", "planted.o"], cwd=folder, check=True)
-        return folder / "planted.a"
+        return check("--only", "analytics-symbols", "--library", folder / "planted.a")
 
     def test_a_library_that_touches_the_world_is_found(self):
         for name, text in IMPURE.items():
             with self.subTest(name):
-                code, output = check(self.copy, "analytics-symbols", "--library", self.built(text))
+                code, output = self.check_library(text)
                 self.assertEqual(code, 1, output)
                 self.assertIn("planted.o", output)
 
     def test_a_library_that_only_computes_is_let_through(self):
-        code, output = check(self.copy, "analytics-symbols", "--library", self.built(PURE))
+        code, output = self.check_library(PURE)
         self.assertEqual(code, 0, output)
 
 
