@@ -2,12 +2,13 @@
 
 #include <algorithm>
 #include <cmath>
+#include <utility>
 
 namespace slipledger::analytics {
 
 namespace {
 
-constexpr double departure = 3.0;     // standard deviations looked for
+constexpr double looked_for = 3.0;    // standard deviations looked for
 constexpr double most_surprise = 4.0; // counted of one summary
 constexpr double enough = 8.0;        // two net summaries at three standard deviations
 constexpr double done_within_h = 8.0; // running hours
@@ -15,7 +16,7 @@ const double least_step = std::log(1.3);
 constexpr Milliseconds same_hour = std::chrono::hours(1);
 
 double added(double evidence, double surprise) {
-    return std::max(0.0, evidence + departure * surprise - departure * departure / 2.0);
+    return std::max(0.0, evidence + looked_for * surprise - looked_for * looked_for / 2.0);
 }
 
 }  // namespace
@@ -23,17 +24,16 @@ double added(double evidence, double surprise) {
 bool ChangeDetector::add(double surprise, Instant at, double running_h, LogEstimate wear_before) {
     if (!std::isfinite(surprise)) return false;
     const double counted = std::clamp(surprise, -most_surprise, most_surprise);
-    const bool quiet = up_ == 0.0 && down_ == 0.0;
+    if (up_ == 0.0 && down_ == 0.0) before_ = {.began = at, .running_h = running_h, .ln_wear = wear_before.ln};
     up_ = added(up_, counted);
     down_ = added(down_, -counted);
-    if (quiet && !following_) {
-        began_ = at;
-        began_h_ = running_h;
-        ln_before_ = wear_before.ln;
-    }
     if (up_ < enough && down_ < enough) return false;
+    // What goes down is followed by the filter and is no step; what goes up further is one departure.
+    if (down_ >= enough)
+        following_ = false;
+    else if (!std::exchange(following_, true))
+        departure_ = before_;
     up_ = down_ = 0.0;
-    following_ = true;
     return true;
 }
 
@@ -45,14 +45,14 @@ void ChangeDetector::explain(Instant at) {
 bool ChangeDetector::follow(LogEstimate wear, Instant at, double running_h) {
     if (step_.active && wear.ln - step_.ln_before < least_step / 2.0) step_ = Step{};
     if (!following_) return false;
-    const double size = wear.ln - ln_before_;
+    const double size = wear.ln - departure_.ln_wear;
     const bool told = size >= least_step && size - 1.2816 * wear.sd >= least_step / 2.0;
-    if (told || running_h - began_h_ > done_within_h) following_ = false;
+    if (told || running_h - departure_.running_h > done_within_h) following_ = false;
     if (!told) return false;
-    const bool attributed = explained_ && explained_at_ >= began_ - same_hour && explained_at_ <= at;
+    const bool attributed = explained_ && explained_at_ >= departure_.began - same_hour && explained_at_ <= at;
     // A second step on top of one in force is counted from where the first began.
-    const double before = step_.active ? std::min(step_.ln_before, ln_before_) : ln_before_;
-    step_ = {.active = true, .attributed = attributed, .began = began_, .ln_before = before, .ln_size = size};
+    const double before = step_.active ? std::min(step_.ln_before, departure_.ln_wear) : departure_.ln_wear;
+    step_ = {.active = true, .attributed = attributed, .began = departure_.began, .ln_before = before, .ln_size = size};
     return true;
 }
 

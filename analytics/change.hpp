@@ -1,5 +1,5 @@
-// Sudden change of a section: sums the evidence in the filter's surprises, says when wear must be let go, and afterwards
-// whether what it did was a step. Slow wear never shows here; the filter's drift follows it.
+// Sudden change of a section: sums the evidence in the filter's surprises, says when wear must be let go, and
+// afterwards whether what it did was a step. Slow wear never shows here; the filter's drift follows it.
 #pragma once
 
 #include <cstdint>
@@ -22,8 +22,8 @@ struct Step {
 // Threads: one at a time.
 class ChangeDetector {
 public:
-    // Adds one summary's surprise, as a log likelihood ratio of a departure of 3 standard deviations against none, in each
-    // direction:
+    // Adds one summary's surprise, as a log likelihood ratio of a departure of 3 standard deviations against none, in
+    // each direction:
     //
     //   g = max(0, g + 3 r - 4.5),   r = surprise, held within -+4 so that no summary can decide alone
     //
@@ -36,30 +36,38 @@ public:
     // Not computed: bookkeeping.
     void explain(Instant at);
 
-    // After each feed: follows an opened departure for 8 running hours and says whether it has just become a step, that is
-    // ln ratio grew by at least ln 1.3 with its low end past half of that; and when a step has gone back by half of the
-    // least size it is over.
-    // Example: before 0, then 0.5 +- 0.05 two hours later -> a step of ratio 1.65.
-    // Source: method.md, 5.
+    // After each feed: follows an opened departure for 8 running hours and says whether it has just become a step, that
+    // is ln ratio grew by at least ln 1.3 with its low end past half of that; and when a step has gone back by half of
+    // the least size it is over. Example: before 0, then 0.5 +- 0.05 two hours later -> a step of ratio 1.65. Source:
+    // method.md, 5.
     bool follow(LogEstimate wear, Instant at, double running_h);
 
     // Not computed: reads the state.
     const Step& step() const { return step_; }
-    bool departing() const { return following_; }
 
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
-        io(self.up_, self.down_, self.began_, self.began_h_, self.ln_before_, self.following_, self.explained_,
+        io(self.up_, self.down_, self.before_, self.departure_, self.following_, self.explained_,
            self.explained_at_, self.step_.active, self.step_.attributed, self.step_.began, self.step_.ln_before,
            self.step_.ln_size);
     }
 
 private:
+    struct Outset {
+        Instant began;
+        double running_h = 0.0;
+        double ln_wear = 0.0;
+
+        template <typename Self, typename Io>
+        static void each_field(Self& self, Io& io) {
+            io(self.began, self.running_h, self.ln_wear);
+        }
+    };
+
     double up_ = 0.0;
     double down_ = 0.0;
-    Instant began_;
-    double began_h_ = 0.0;
-    double ln_before_ = 0.0;
+    Outset before_;     // since there was any evidence
+    Outset departure_;  // of the departure being followed
     bool following_ = false;
     bool explained_ = false;
     Instant explained_at_;

@@ -38,12 +38,12 @@ struct DaySpan {
 // Why a section has no level. `none`: it has one.
 enum class UnjudgedReason : std::uint8_t {
     none,
-    no_data,            // nothing judged yet at all
-    learning,           // fewer judged running hours than the baseline wants
-    seldom_judged,      // under 10 % of the last 30 days' running hours could be judged
-    shared_drain,       // one drain meter for several sections, not told apart
-    no_basis,           // the sensors fitted give none
-    silent,             // only ever laid over by a report: newest reading 24 h older than the plant's newest
+    no_data,        // nothing judged yet at all
+    learning,       // fewer judged running hours than the baseline wants
+    seldom_judged,  // under 10 % of the last 30 days' running hours could be judged
+    shared_drain,   // one drain meter for several sections, not told apart
+    no_basis,       // the sensors fitted give none
+    silent,         // only ever laid over by a report: newest reading 24 h older than the plant's newest
 };
 
 std::string_view name_of(UnjudgedReason reason);  // "no-data", "learning", ...
@@ -57,26 +57,27 @@ struct SummaryVerdict {
     Instant start;
     Level level = Level::unjudged;
     UnjudgedReason reason = UnjudgedReason::no_data;
-    Ranged leakage_ratio;               // the summary's own, with the coefficients known at its end
+    Ranged leakage_ratio;  // the summary's own, with the coefficients known at its end
     Ranged filtered_ratio;
-    Ranged efficiency;                  // fraction, at the rated (else reference) point
-    double leakage_lpm = unknown;       // wear-dependent leakage seen at the summary's own operating point
-    double excess_lpm = unknown;        // above healthy, at the same operating point
+    Ranged efficiency;             // fraction, at the rated (else reference) point
+    double leakage_lpm = unknown;  // wear-dependent leakage seen at the summary's own operating point
+    double excess_lpm = unknown;   // above healthy, at the same operating point
     double leakage_kw = unknown;
     bool outside_coverage = false;
 };
 
 struct HoursInHand {
-    double low = unknown;               // 10, 50, 90 % quantiles, running hours; NaN: null
+    double low = unknown;  // 10, 50, 90 % quantiles, running hours; NaN: null
     double mid = unknown;
     double high = unknown;
-    std::string_view limit;             // rule whose act limit comes first: "leakage-ratio", "efficiency", "drain-share"; empty: none
+    std::string_view
+        limit;  // rule whose act limit comes first: "leakage-ratio", "efficiency", "drain-share"; empty: none
 };
 
 struct Trend {
-    Ranged per_1000_h;                  // change of the ratio itself
+    Ranged per_1000_h;  // change of the ratio itself
     bool established = false;
-    std::optional<Instant> onset;       // simplest: first day of the present run of levels above sound
+    std::optional<Instant> onset;  // simplest: first day of the present run of levels above sound
 };
 
 // Judgement on one day, as it stood at its end (or so far).
@@ -85,24 +86,24 @@ struct DayVerdict {
     std::int32_t life = 1;
     Level level = Level::unjudged;
     UnjudgedReason reason = UnjudgedReason::no_data;
-    Ranged leakage_ratio;               // the filter's, at the day's last summary
+    Ranged leakage_ratio;  // the filter's, at the day's last summary
     Ranged efficiency;
     double efficiency_baseline = unknown;
-    bool efficiency_at_rated = true;    // else at the reference point
+    bool efficiency_at_rated = true;  // else at the reference point
     double clearance_growth_percent = unknown;
-    double leakage_lpm = unknown;       // means over the day's judged hours
+    double leakage_lpm = unknown;  // means over the day's judged hours
     double excess_lpm = unknown;
     double leakage_kw = unknown;
     Trend trend;
     HoursInHand hours_in_hand;
-    double step_ratio = unknown;        // of a step found on this day: ratio after over before
+    double step_ratio = unknown;  // of a step found on this day: ratio after over before
     CauseKind cause = CauseKind::none;
     double cause_weight = 0.0;
-    double running_h = 0.0;             // of the day
+    double running_h = 0.0;  // of the day
     double judged_h = 0.0;
-    double life_running_h = 0.0;        // since the life began, as far as watched
+    double life_running_h = 0.0;  // since the life began, as far as watched
     double life_judged_h = 0.0;
-    double learning_h_left = 0.0;       // judged running hours still wanted by the baseline
+    double learning_h_left = 0.0;  // judged running hours still wanted by the baseline
     double share_judged_30d = unknown;
     double slip_coefficient = unknown;  // Wilson's, mean of the day
     double zero_lpm = unknown;          // the meter's zero as the filter holds it
@@ -121,9 +122,11 @@ public:
     Course(Course&&) noexcept;
     Course& operator=(Course&&) noexcept;
 
-    // A new cartridge / rotating group / gear set: nothing learned crosses over; open episodes of the old life end here.
+    // A new cartridge / rotating group / gear set: nothing learned crosses over; open episodes of the old life end
+    // here.
     void begin_life(const LifeStart& life, const SectionSpec& spec);
-    // Facts of the same life changed (oil, setting, sensor): the estimate goes on, a change at this moment is attributed to it first.
+    // Facts of the same life changed (oil, setting, sensor): the estimate goes on, a change at this moment is
+    // attributed to it first.
     void change_facts(Instant at, const SectionSpec& spec);
 
     SummaryVerdict take(const Summary& summary);

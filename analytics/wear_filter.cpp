@@ -16,7 +16,7 @@ constexpr double drift_walk = 0.0006;          // per running day^1.5
 constexpr double disturbance_sd = 0.03;
 constexpr double disturbance_days = 10.0;      // calendar days
 constexpr double model_error = 0.03;           // of predicted leakage: how well three terms describe a pump for an hour
-constexpr double contrast_error = 0.10;        // of a contrast: pressure swings pass through gaps that also bend and warm
+constexpr double contrast_error = 0.30;        // of a contrast: gaps bend and warm with pressure, hour after hour alike
 constexpr double least_swing = 0.03;           // of the reference features: smaller swings are mostly gauge noise
 constexpr double hourly_gain_share = 0.3;      // of a meter's gain error that comes and goes; the rest is one with dV
 constexpr double stop_repeatability = 0.3;     // of the meter's accuracy, from one stop to the next
@@ -183,8 +183,10 @@ void WearFilter::feed_mean(const Moments& m, bool compensating, bool settled) {
 }
 
 // The covariance within a summary, turned to its own axes, where each axis is a sighting of its own of the slopes a w,
-// b w and c w + dV n: free of zero and constants, and of dV where speed does not vary.
+// b w and c w + dV n: free of zero and constants, and of dV where speed does not vary. By delivery without a speed sensor a
+// swing says nothing: the motor slips more under load, and flow that is missing for that looks just like leakage.
 void WearFilter::feed_contrasts(const Moments& m, bool settled) {
+    if (basis_ == Basis::delivery && !spec_.has_speed_sensor) return;
     const Eigen::Matrix3d swings = feature_covariance(m);
     if (swings.trace() < square(least_swing)) return;
     const Eigen::SelfAdjointEigenSolver<Eigen::Matrix3d> axes(swings);
