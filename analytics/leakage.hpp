@@ -78,7 +78,7 @@ double slip_coefficient(const SlipInputs& in);
 //
 // Returns a fraction: 0.26 is gaps grown by 26 %; NaN outside these ranges. Means nothing after a step, where one part
 // broke and the others did not.
-// Example: a alone, w = 2 -> 0.2599; 1 : 0.15 : 0.06, w = 2 -> 0.2919.
+// Example: a alone, w = 2 -> 0.2599; 1 : 0.15 : 0.06, w = 2 -> 0.2905.
 // Source: laminar flow through a slot goes with the cube of its height (any textbook); orifice and speed terms with the
 // height itself.
 double clearance_growth(const LeakageCoefficients& coefficients, double leakage_ratio);

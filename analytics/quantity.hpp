@@ -29,7 +29,9 @@ enum class Quantity : std::uint8_t {
 
 inline constexpr std::size_t quantity_count = 14;
 
-constexpr std::size_t index_of(Quantity quantity) { return static_cast<std::size_t>(quantity); }
+constexpr std::size_t index_of(Quantity quantity) {
+    return static_cast<std::size_t>(quantity);
+}
 
 struct QuantityFacts {
     Quantity quantity;
@@ -58,9 +60,14 @@ inline constexpr std::array<QuantityFacts, quantity_count> quantity_table{{
     {Quantity::filter_dp, "filter_dp", "bar", -1.0, 100.0, "0.8"},
 }};
 
-constexpr const QuantityFacts& facts_of(Quantity quantity) { return quantity_table[index_of(quantity)]; }
-constexpr std::string_view name_of(Quantity quantity) { return facts_of(quantity).name; }
+constexpr const QuantityFacts& facts_of(Quantity quantity) {
+    return quantity_table[index_of(quantity)];
+}
+constexpr std::string_view name_of(Quantity quantity) {
+    return facts_of(quantity).name;
+}
 
+// Not computed: a look-up.
 constexpr std::optional<Quantity> quantity_named(std::string_view name) {
     for (const QuantityFacts& facts : quantity_table)
         if (facts.name == name) return facts.quantity;

@@ -70,8 +70,8 @@ void PointSample::trim() {
     const auto low = ordered_.begin() + static_cast<std::ptrdiff_t>(trimmed_);
     const auto high = ordered_.end() - static_cast<std::ptrdiff_t>(trimmed_) - 1;
     std::nth_element(ordered_.begin(), low, ordered_.end());
-    std::nth_element(low, high, ordered_.end());
     const double lowest_kept = low->value;
+    std::nth_element(low, high, ordered_.end());
     const double highest_kept = high->value;
     for (auto it = ordered_.begin(); it != low; ++it) kept_[it->row] = 0;
     for (auto it = high + 1; it != ordered_.end(); ++it) kept_[it->row] = 0;

@@ -17,7 +17,9 @@ struct Moments;
 // Threads: one at a time.
 class PointSample {
 public:
+    // Not computed: collects.
     void add(const JudgedPoint& point);
+    // Not computed: forgets.
     void clear() { rows_.clear(); }
     // Not computed: a count.
     std::size_t size() const { return rows_.size(); }
