@@ -27,17 +27,24 @@ inline constexpr std::array<std::pair<Control, std::string_view>, 4> control_nam
     {Control::stroke_measured, "stroke-measured"},
 }};
 
-constexpr std::string_view name_of(PumpType type) { return pump_type_names[static_cast<std::size_t>(type)].second; }
-constexpr std::string_view name_of(Control control) { return control_names[static_cast<std::size_t>(control)].second; }
+constexpr std::string_view name_of(PumpType type) {
+    return pump_type_names[static_cast<std::size_t>(type)].second;
+}
+constexpr std::string_view name_of(Control control) {
+    return control_names[static_cast<std::size_t>(control)].second;
+}
 
 // What wears and is replaced as a whole, in the trade's words.
 constexpr std::string_view replaceable_part(PumpType type) {
     switch (type) {
         case PumpType::axial_piston:
-        case PumpType::radial_piston: return "rotating group";
-        case PumpType::vane: return "cartridge";
+        case PumpType::radial_piston:
+            return "rotating group";
+        case PumpType::vane:
+            return "cartridge";
         case PumpType::external_gear:
-        case PumpType::internal_gear: return "gear set";
+        case PumpType::internal_gear:
+            return "gear set";
     }
     return "rotating group";
 }

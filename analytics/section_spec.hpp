@@ -18,7 +18,9 @@ inline constexpr double unknown = std::numeric_limits<double>::quiet_NaN();
 // What is seen of the leakage: what runs out of the case, or what is missing at the outlet.
 enum class Basis : std::uint8_t { case_drain, delivery };
 
-constexpr std::string_view name_of(Basis basis) { return basis == Basis::case_drain ? "case-drain" : "delivery"; }
+constexpr std::string_view name_of(Basis basis) {
+    return basis == Basis::case_drain ? "case-drain" : "delivery";
+}
 
 enum class Level : std::uint8_t { unjudged, sound, watch, plan, act };
 
@@ -46,10 +48,10 @@ struct Ladder {
 struct RuleLimits {
     Ladder leakage_ratio{.watch = 1.17, .plan = 2.0, .act = 3.0};
     Ladder efficiency_points_lost{.watch = 4.0, .plan = 7.0, .act = 10.0};  // common practice, no source
-    Ladder drain_share_percent;  // raw case drain over theoretical flow
+    Ladder drain_share_percent;                                             // raw case drain over theoretical flow
     Ladder over_temperature_c;
     Ladder case_pressure_bar;
-    Ladder inlet_vacuum_bar;     // how far below 0 bar gauge, positive
+    Ladder inlet_vacuum_bar;  // how far below 0 bar gauge, positive
 };
 
 // How fast things may move before a point is `transient`.
@@ -60,45 +62,45 @@ struct Steady {
 };
 
 struct FlowMeter {
-    double accuracy_lpm = unknown;       // of zero: one standard deviation
-    double gain_error = 0.01;            // fraction of reading, one standard deviation
+    double accuracy_lpm = unknown;  // of zero: one standard deviation
+    double gain_error = 0.01;       // fraction of reading, one standard deviation
     double resolution_lpm = 0.0;
-    double least_lpm = 0.0;              // below it a reading is "less than", not zero
-    bool on_pressure_side = true;        // of a delivery meter: brought to inlet density if so
+    double least_lpm = 0.0;        // below it a reading is "less than", not zero
+    bool on_pressure_side = true;  // of a delivery meter: brought to inlet density if so
 };
 
 struct BaselineRule {
     RunningHours run_in{50.0};
-    RunningHours least{50.0};            // judged running hours until then: unjudged, learning
-    std::optional<RunningHours> most;    // after it the coefficients are kept, no longer updated
+    RunningHours least{50.0};          // judged running hours until then: unjudged, learning
+    std::optional<RunningHours> most;  // after it the coefficients are kept, no longer updated
 };
 
 // Leakage the maker measured on this cartridge / rotating group when new.
 struct MakerTest {
     double leakage_lpm = unknown;
     DutyPoint at;
-    double viscosity_cst = unknown;      // else from the fluid at at.temperature_c
+    double viscosity_cst = unknown;  // else from the fluid at at.temperature_c
 };
 
 struct SectionSpec {
     PumpType type = PumpType::axial_piston;
     Control control = Control::fixed;
-    double displacement_cm3 = unknown;   // name plate
+    double displacement_cm3 = unknown;     // name plate
     double displacement_accuracy = 0.012;  // one standard deviation, fraction
     DutyPoint rated;
-    DutyPoint reference;                 // resolved: the plant file's, else 75 % of rated pressure at rated speed, temperature
+    DutyPoint reference;  // resolved: the plant file's, else 75 % of rated pressure at rated speed, temperature
     double compensator_bar = unknown;
-    double plateau_fraction = 0.03;      // half width of the band around the compensator's plateau
+    double plateau_fraction = 0.03;  // half width of the band around the compensator's plateau
     double relief_bar = unknown;
-    double max_stroke_fraction = 1.0;    // a volume stop
-    bool full_stroke = false;            // proven: it always runs at its largest stroke
+    double max_stroke_fraction = 1.0;  // a volume stop
+    bool full_stroke = false;          // proven: it always runs at its largest stroke
     double minimum_speed_rpm = 0.0;
     double motor_nominal_rpm = unknown;  // used where no speed is measured
     double motor_slip_at_rated = 0.0;    // fraction, at rated pressure
     Milliseconds settling{10000};
     Steady steady;
     double case_flushing_lpm = 0.0;
-    bool shared_drain = false;           // one drain meter for several sections
+    bool shared_drain = false;  // one drain meter for several sections
     bool has_speed_sensor = true;
     bool has_temperature_sensor = true;
     Fluid fluid;
@@ -107,10 +109,10 @@ struct SectionSpec {
     BaselineRule baseline;
     std::optional<MakerTest> maker_test;
     RuleLimits limits;
-    double duty_h_per_week = unknown;    // planned running hours; else the usual duty
+    double duty_h_per_week = unknown;  // planned running hours; else the usual duty
     double spare_lead_days = unknown;
     std::optional<Instant> second_next_planned_stop;
-    bool watched_from_new = false;       // the life began with a replacement told to the ledger, or `since` says new
+    bool watched_from_new = false;  // the life began with a replacement told to the ledger, or `since` says new
 };
 
 }  // namespace slipledger::analytics
