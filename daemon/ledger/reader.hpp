@@ -17,6 +17,8 @@
 
 namespace slipledger::ledger {
 
+class PointRowsBuilder;
+
 // Readings of one point: ascending times, one column per quantity that occurs, NaN where a cell is empty or disputed.
 struct PointRows {
     std::vector<Instant> times;
@@ -24,7 +26,7 @@ struct PointRows {
 };
 
 struct StoredCount {
-    std::uint64_t readings = 0;  // cells with a value
+    std::uint64_t readings = 0;  // cells with a value, disputed ones included
     std::uint64_t disputed = 0;  // cells with several
 };
 
@@ -58,6 +60,10 @@ public:
     std::optional<Instant> newest_of_plant() const;
     PointRows last_row(PointId point) const;                 // at most one row
     StoredCount count(PointId point) const;
+    // Readings of [from, to) of all points whose hours still fill, in one pass: `recent` is ordered by time, so that asking
+    // point by point reads it as often as there are points. What has been moved to blocks is not in it.
+    std::map<PointId, PointRows> filling(Instant from, Instant to) const;
+    std::optional<Instant> closed_until(PumpId pump) const;  // summaries that end here or before are closed
 
     std::vector<Mark> marks() const;                         // all raised, oldest generation first
     // Newest checkpoint of the track for a finished day before `date`.
@@ -82,6 +88,10 @@ public:
 
 private:
     struct Connection;
+
+    void settle(PointRowsBuilder& builder, PointId point, Instant from, Instant to) const;
+    std::optional<Instant> instant(const std::string& sql, std::int64_t id) const;
+
     std::unique_ptr<Connection> connection_;
 };
 

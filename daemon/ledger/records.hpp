@@ -65,6 +65,7 @@ struct IntakeOutcome {
     std::vector<std::uint8_t> added;  // per source: 1 if it added any new value (stored), else 0 (repeated)
     std::uint64_t stored = 0;
     std::uint64_t repeated = 0;
+    bool marked = false;              // the commit it was part of raised work marks
     bool failed = false;              // not committed (disk full ...): nothing of it is in the ledger
     std::string failure;
 };

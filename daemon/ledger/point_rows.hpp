@@ -1,0 +1,29 @@
+// Puts blocks and recent rows of one point together as columns. What a reader gets must not tell where a row lay.
+#pragma once
+
+#include "daemon/ledger/hour_cells.hpp"
+#include "daemon/ledger/reader.hpp"
+#include "daemon/ledger/recent_table.hpp"
+
+namespace slipledger::ledger {
+
+// Rows come in ascending order of time. Threads: one at a time.
+class PointRowsBuilder {
+public:
+    PointRowsBuilder(std::int64_t from, std::int64_t to) : from_(from), to_(to) {}
+
+    void add(const HourCells& cells);
+    void add(const RecentRow& row);
+    // A disputed cell of which one value was found to hold.
+    void settle(std::int64_t time, std::size_t quantity, double value);
+    PointRows finish();
+
+private:
+    std::vector<double>& column(std::size_t quantity);
+
+    std::int64_t from_;
+    std::int64_t to_;
+    PointRows rows_;
+};
+
+}  // namespace slipledger::ledger

@@ -1,0 +1,162 @@
+// Readings in and out of the ledger: what is stored comes back exactly, and neither order nor repeats nor batches can be told.
+
+#include <gmock/gmock.h>
+
+#include <cmath>
+#include <cstdlib>
+
+#include "tests/daemon/ledger/ledger_fixture.hpp"
+
+namespace slipledger::ledger {
+namespace {
+
+using ::testing::ElementsAre;
+
+const std::vector<double>& column(const PointRows& rows, Quantity quantity) {
+    return rows.columns[analytics::index_of(quantity)];
+}
+
+class Readings : public LedgerTest {};
+
+TEST_F(Readings, ComeBackAsTheyWereToldBeforeTheirHourCloses) {
+    store({row_of(point("press-1"), day_one + 1min, {{Quantity::outlet_pressure, 182.4}, {Quantity::shaft_speed, 1482.0}}),
+           row_of(point("press-1"), day_one + 2min, {{Quantity::outlet_pressure, 183.1}})});
+    const PointRows rows = reader().rows(point("press-1"), day_one, day_one + 1h);
+    EXPECT_THAT(rows.times, ElementsAre(day_one + 1min, day_one + 2min));
+    EXPECT_THAT(column(rows, Quantity::outlet_pressure), ElementsAre(182.4, 183.1));
+    EXPECT_EQ(column(rows, Quantity::shaft_speed)[0], 1482.0);
+    EXPECT_TRUE(std::isnan(column(rows, Quantity::shaft_speed)[1]));
+    EXPECT_TRUE(column(rows, Quantity::case_drain_flow).empty());
+}
+
+TEST_F(Readings, ComeBackTheSameAfterTheirHourIsMovedToABlock) {
+    const double third = std::nextafter(1.0 / 3.0, 1.0);  // no decimal: the block must keep it all the same
+    for (int minute = 0; minute < 150; ++minute)
+        store({row_of(point("lathe"), day_one + std::chrono::minutes(minute), {{Quantity::case_drain_flow, third * minute}})});
+    const PointRows before = reader().rows(point("lathe"), day_one, day_one + 3h);
+    close_all_hours();
+    const PointRows after = reader().rows(point("lathe"), day_one, day_one + 3h);
+    EXPECT_EQ(before.times, after.times);
+    EXPECT_EQ(column(before, Quantity::case_drain_flow), column(after, Quantity::case_drain_flow));
+    EXPECT_EQ(after.times.size(), 150U);
+    EXPECT_EQ(reader().last_row(point("lathe")).times.front(), day_one + 149min);
+}
+
+TEST_F(Readings, ThatAreRepeatedAddNothing) {
+    const Row row = row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 182.4}});
+    EXPECT_EQ(store({row}).stored, 1U);
+    const IntakeOutcome again = store({row, row});
+    EXPECT_EQ(again.stored, 0U);
+    EXPECT_EQ(again.repeated, 2U);
+    EXPECT_EQ(reader().count(point("press-1")).readings, 1U);
+}
+
+TEST_F(Readings, AreDisputedByASecondValueAndAThirdIsKeptToo) {
+    const auto tell = [&](double value) {
+        return store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, value}})}).stored;
+    };
+    EXPECT_EQ(tell(180.0), 1U);
+    EXPECT_EQ(tell(181.0), 1U);
+    EXPECT_EQ(tell(182.0), 1U);
+    for (const double value : {180.0, 181.0, 182.0}) EXPECT_EQ(tell(value), 0U) << value;
+    EXPECT_EQ(reader().count(point("press-1")).disputed, 1U);
+    EXPECT_TRUE(column(reader().rows(point("press-1"), day_one, day_one + 1h), Quantity::outlet_pressure).empty());
+    store({row_of(point("press-1"), day_one + 3h, {{Quantity::outlet_pressure, 1.0}})});
+    close_all_hours();
+    EXPECT_EQ(tell(181.0), 0U);
+    EXPECT_EQ(tell(183.0), 1U);
+    EXPECT_EQ(reader().count(point("press-1")).disputed, 1U);
+}
+
+TEST_F(Readings, OfACorrectingFeedSettleTheDispute) {
+    plant_.feeds[1].corrects = "plc";
+    const FeedId lab = ledger().directory().feeds.at("lab");
+    store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 181.0}}, lab)});
+    store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 170.0}}, ledger().directory().feeds.at("plc"))});
+    EXPECT_THAT(column(reader().rows(point("press-1"), day_one, day_one + 1h), Quantity::outlet_pressure),
+                ElementsAre(181.0));
+}
+
+TEST_F(Readings, OfOnePumpWithOneSectionLieAtOnePoint) {
+    EXPECT_EQ(point("press-1"), point("press-1", "A"));
+    EXPECT_NE(point("double", "P1"), point("double", "P2"));
+    EXPECT_NE(point("double"), point("double", "P1"));
+}
+
+// All that can be seen of a point, as text of exact numbers.
+std::string seen(const Reader& reader, PointId point) {
+    const PointRows rows = reader.rows(point, day_one - 24h * 400, day_one + 24h * 400);
+    std::string text;
+    char number[64];
+    for (std::size_t i = 0; i < rows.times.size(); ++i) {
+        text += std::to_string(rows.times[i].time_since_epoch().count());
+        for (const auto& values : rows.columns) {
+            std::snprintf(number, sizeof number, " %a", values.empty() ? std::nan("") : values[i]);
+            text += number;
+        }
+        text += '\n';
+    }
+    const StoredCount count = reader.count(point);
+    return text + std::to_string(count.readings) + " " + std::to_string(count.disputed);
+}
+
+class AnyOrder : public Readings, public ::testing::WithParamInterface<unsigned> {
+protected:
+    static unsigned seed() {
+        const char* given = std::getenv("SLIPLEDGER_SEED");
+        return given != nullptr ? static_cast<unsigned>(std::atoi(given)) : 20260105U;
+    }
+
+    std::vector<Row> rows_with_disputes(std::mt19937& random) {
+        std::vector<Row> rows;
+        for (int minute = 0; minute < 24 * 60; ++minute)
+            for (const char* id : {"press-1", "press-2", "lathe"}) {
+                const double value = std::round(1000.0 * static_cast<double>(random() % 2000)) / 10000.0;
+                Row row = row_of(point(id), day_one + std::chrono::minutes(minute),
+                                 {{Quantity::outlet_pressure, 100.0 + value}, {Quantity::case_drain_flow, value / 10.0}});
+                rows.push_back(row);
+                if (random() % 100 != 0) continue;
+                row.feed = FeedId{2};
+                row.value[analytics::index_of(Quantity::outlet_pressure)] += static_cast<double>(random() % 3);
+                rows.push_back(row);
+            }
+        return rows;
+    }
+
+    std::string seen_after(const std::vector<Row>& rows, std::mt19937& random) {
+        close();
+        std::filesystem::remove_all(folder_.path());
+        std::filesystem::create_directory(folder_.path());
+        for (std::size_t from = 0; from < rows.size();) {
+            const std::size_t size = std::min<std::size_t>(1 + random() % 900, rows.size() - from);
+            store({rows.begin() + static_cast<std::ptrdiff_t>(from), rows.begin() + static_cast<std::ptrdiff_t>(from + size)});
+            if (random() % 3 == 0) close_all_hours();
+            if (random() % 16 == 0) close();
+            from += size;
+        }
+        close_all_hours();
+        std::string all;
+        for (const char* id : {"press-1", "press-2", "lathe"}) all += seen(reader(), point(id));
+        return all;
+    }
+};
+
+TEST_P(AnyOrder, OfTheSameRowsIsSeenAsTheSameReadings) {
+    std::mt19937 random(seed() + GetParam());
+    SCOPED_TRACE("SLIPLEDGER_SEED=" + std::to_string(seed()));
+    std::vector<Row> rows = rows_with_disputes(random);
+    const std::string tidy = seen_after(rows, random);
+    std::vector<Row> twice = rows;
+    twice.insert(twice.end(), rows.begin(), rows.end());
+    EXPECT_EQ(tidy, seen_after(twice, random));
+    std::ranges::reverse(rows);
+    EXPECT_EQ(tidy, seen_after(rows, random));
+    std::ranges::shuffle(twice, random);
+    EXPECT_EQ(tidy, seen_after(twice, random));
+    EXPECT_NE(tidy.find('\n'), std::string::npos);
+}
+
+INSTANTIATE_TEST_SUITE_P(Seeds, AnyOrder, ::testing::Range(0U, 3U));
+
+}  // namespace
+}  // namespace slipledger::ledger

@@ -1,0 +1,61 @@
+// A ledger that fails at its n-th call, before or after the real one has stored: a full disk, or a process killed between
+// commit and reply. Everything else goes through to the real ledger.
+#pragma once
+
+#include <memory>
+
+#include "daemon/ledger/ledger.hpp"
+
+namespace slipledger::testing {
+
+enum class FailsWhen { before_storing, after_storing };
+
+// Threads: one at a time, like the ledger it wraps.
+class FailingLedger final : public ledger::Ledger {
+public:
+    // `at` counts from 1; later calls go through again.
+    FailingLedger(std::unique_ptr<ledger::Ledger> real, int at, FailsWhen when)
+        : real_(std::move(real)), at_(at), when_(when) {}
+
+    int calls() const { return calls_; }
+
+    const ledger::Directory& directory() const override { return real_->directory(); }
+    std::vector<ledger::IntakeOutcome> store(std::span<const ledger::IntakeBatch> batches) override {
+        return counted([&] { return real_->store(batches); });
+    }
+    bool close_hours() override {
+        return counted([&] { return real_->close_hours(); });
+    }
+    bool store(const ledger::AnalysisResult& result) override {
+        return counted([&] { return real_->store(result); });
+    }
+    std::int64_t store(const ledger::Event& event) override {
+        return counted([&] { return real_->store(event); });
+    }
+    void store(std::span<const ledger::Notice> notices) override {
+        counted([&] { return real_->store(notices), true; });
+    }
+    void store(std::span<const ledger::DeliveryUpdate> updates) override {
+        counted([&] { return real_->store(updates), true; });
+    }
+    void backup(const std::string& path) override {
+        counted([&] { return real_->backup(path), true; });
+    }
+
+private:
+    template <typename Call>
+    auto counted(Call&& call) {
+        const bool fails = ++calls_ == at_;
+        if (fails && when_ == FailsWhen::before_storing) throw ledger::LedgerFailure("the disk is full (test)");
+        auto result = call();
+        if (fails) throw ledger::LedgerFailure("killed after the commit (test)");
+        return result;
+    }
+
+    std::unique_ptr<ledger::Ledger> real_;
+    int at_;
+    FailsWhen when_;
+    int calls_ = 0;
+};
+
+}  // namespace slipledger::testing
