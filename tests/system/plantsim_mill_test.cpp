@@ -56,8 +56,8 @@ double drain_while_holding(std::size_t pump, int first_day) {
 
 TEST(PlantsimMill, WearsWhatItsStorySaysAndNothingElse) {
     const Millis end = mill().plant().year_ends - 1;
-    EXPECT_NEAR(mill().ratio(press_1, 0, end), 2.8, 0.01);
-    EXPECT_NEAR(mill().ratio(lathe, 0, end), 2.4, 0.01);
+    EXPECT_NEAR(mill().ratio(press_1, 0, end), 2.6, 0.01);
+    EXPECT_NEAR(mill().ratio(lathe, 0, end), 2.5, 0.01);
     EXPECT_NEAR(mill().ratio(barker, 0, end), 1.85, 0.01);
     EXPECT_NEAR(mill().ratio(barker, 0, new_year() + 230 * day_ms), 1.0, 1e-9);
     for (const std::size_t healthy : {press_2, std::size_t{3}, std::size_t{4}, scarfer, std::size_t{7}, stacker})

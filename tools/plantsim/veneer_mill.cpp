@@ -124,7 +124,7 @@ PumpDrawing lathe() {
         .id = "A",
         .fitted = {.drain = true},
         .product_bar = {85.0, 105.0, 125.0, 145.0},
-        .lives = {whole_year(67.0, 1.004, vane_gaps(1.0), {.end_ratio = 2.4, .begins = 0.25})}};
+        .lives = {whole_year(67.0, 1.004, vane_gaps(1.0), {.end_ratio = 2.5, .begins = 0.25})}};
     const SectionDrawing knife{
         .id = "B",
         .fitted = {.drain = true},
@@ -279,7 +279,7 @@ PlantDrawing veneer_mill() {
                       .reservoirs = tanks(),
                       .pumps = {}};
     mill.pumps = {
-        press("press-1", 0, 1.003, {.end_ratio = 2.8, .begins = 0.22}),
+        press("press-1", 0, 1.003, {.end_ratio = 2.6, .begins = 0.22}),
         press("press-2", 1, 0.996, {}),
         lathe(),
         loader(),
