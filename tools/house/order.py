@@ -1,4 +1,5 @@
 """Rules on the order of files: twins, tests, lists of sources, headers that explain themselves, forbidden words."""
+import posixpath
 import re
 
 import references
@@ -32,8 +33,9 @@ def lists_of_sources(tree):
         folder = path.rpartition("/")[0]
         for number, line in enumerate(tree.text(path).split("\n"), 1):
             for source in re.findall(r"[\w./{}$-]+\.cpp\b", line.split("#")[0]):
-                source = re.sub(r"\$\{[^}]*SOURCE_DIR\}/", "/", source)
-                full = source.lstrip("/") if source.startswith("/") else f"{folder}/{source}".lstrip("/")
+                source = source.replace("${CMAKE_CURRENT_SOURCE_DIR}/", "")
+                full = re.sub(r"^\$\{\w+_SOURCE_DIR\}/", "", source)
+                full = full if full != source else posixpath.normpath(f"./{folder}/{source}")
                 named.setdefault(full, []).append((path, number))
     return named
 
