@@ -22,8 +22,8 @@ struct Endpoint {
 };
 
 // What a column or a tag of a feed stands for: canonical value = (text * scale + offset), then converted from `unit`.
-// Exactly one of pump, reservoir and drain_group is set, or none where the row itself (or Feed::pump) names the pump.
-// Threads: a value, share freely.
+// At most one of pump, reservoir and drain_group is set, none where the row itself (or Feed::pump) names the pump;
+// `section` may stand beside any of these pumps. Threads: a value, share freely.
 struct Target {
     std::string pump;
     std::string section;  // empty: the reading belongs to the pump

@@ -10,19 +10,17 @@
 namespace slipledger::config {
 namespace {
 
-// A section of a pump that is known; where the pump is not, that has been told already.
+// A section of the pump that is named here or, failing that, by the feed. Where only the rows name their pump, some
+// pump must have such a section; where the pump is unknown, that has been told already.
 void read_section_of(const ObjectReader& reader, const FeedSurroundings& surroundings, const std::string& pump_id,
                      std::string& section) {
-    if (!reader.has("section")) return;
-    if (!reader.has("pump")) {
-        reader.complain("section", "also \"pump\": a section is named within its pump", "missing");
-        return;
-    }
-    const Pump* pump = surroundings.plant.find_pump(pump_id);
-    if (pump == nullptr) return;
     Names sections;
-    for (const Section& known : pump->sections) sections.insert(known.id);
-    read_reference(reader, "section", fmt::format("section of pump {}", pump_id), section, sections);
+    for (const Pump& pump : surroundings.plant.pumps) {
+        if (!pump_id.empty() && pump.id != pump_id) continue;
+        for (const Section& known : pump.sections) sections.insert(known.id);
+    }
+    if (sections.empty()) return;
+    read_reference(reader, "section", pump_id.empty() ? "section" : "section of pump " + pump_id, section, sections);
 }
 
 void read_quantity(const ObjectReader& reader, analytics::Quantity& quantity) {
@@ -52,10 +50,10 @@ void read_unit(const ObjectReader& reader, analytics::Quantity quantity, std::st
                     "unknown-unit");
 }
 
-Target read_target(const ObjectReader& reader, const FeedSurroundings& surroundings) {
+Target read_target(const ObjectReader& reader, const FeedSurroundings& surroundings, const Feed& feed) {
     Target target;
     read_reference(reader, "pump", "pump", target.pump, surroundings.pumps);
-    read_section_of(reader, surroundings, target.pump, target.section);
+    read_section_of(reader, surroundings, target.pump.empty() ? feed.pump : target.pump, target.section);
     read_reference(reader, "reservoir", "reservoir", target.reservoir, surroundings.reservoirs);
     read_reference(reader, "drain_group", "drain group", target.drain_group, surroundings.drain_groups);
     read_quantity(reader, target.quantity);
@@ -154,6 +152,10 @@ void read_way_in(const ObjectReader& reader, Feed& feed, FeedSurroundings& surro
 }
 
 void read_mapping(const ObjectReader& reader, Feed& feed, const FeedSurroundings& surroundings) {
+    read_reference(reader, "pump", "pump", feed.pump, surroundings.pumps);
+    if (reader.has("section") && !reader.has("pump"))
+        reader.complain("section", "also \"pump\": without it every pump's rows would be of that section", "missing");
+    read_section_of(reader, surroundings, feed.pump, feed.section);
     feed.time.zone = surroundings.plant.time_zone;
     reader.object("time", [&](const ObjectReader& time) { read_time_format(time, feed.time); });
     reader.read("pump_column", feed.pump_column);
@@ -161,16 +163,14 @@ void read_mapping(const ObjectReader& reader, Feed& feed, const FeedSurroundings
     reader.read("tag_column", feed.tag_column);
     reader.read("value_column", feed.value_column);
     reader.each_named("columns", [&](const std::string& name, const ObjectReader& target) {
-        feed.columns.emplace(name, read_target(target, surroundings));
+        feed.columns.emplace(name, read_target(target, surroundings, feed));
     });
     reader.each_named("tags", [&](const std::string& name, const ObjectReader& target) {
-        feed.tags.emplace(name, read_target(target, surroundings));
+        feed.tags.emplace(name, read_target(target, surroundings, feed));
         const bool placed = target.has("pump") || target.has("reservoir") || target.has("drain_group");
         if (!placed && !reader.has("pump"))
             target.complain("a \"pump\", \"reservoir\" or \"drain_group\": a tag says where by itself", "missing");
     });
-    read_reference(reader, "pump", "pump", feed.pump, surroundings.pumps);
-    read_section_of(reader, surroundings, feed.pump, feed.section);
 }
 
 }  // namespace

@@ -14,8 +14,11 @@ FluidTable read_built_in_fluids() {
     for (const Text& text : embedded_texts()) {
         const JsonReading reading = read_json(text.text);
         std::vector<Fault> faults = reading.faults;
-        for (const auto& [name, node] : reading.root.members)
-            table.emplace(name, read_fluid(name, ObjectReader(node, step_into("", name), "fluid", faults)));
+        for (std::size_t i = 0; i < reading.root.keys.size(); ++i) {
+            const std::string& name = reading.root.keys[i];
+            const ObjectReader reader(reading.root.items[i], step_into("", name), "fluid", faults);
+            table.emplace(name, read_fluid(name, reader));
+        }
         assert(faults.empty() && "config/fluids.json is ours");
     }
     return table;

@@ -79,8 +79,9 @@ public:
             next_ = {&dropped_.back(), step_into(open_.back().pointer, name)};
             return true;
         }
-        object.members.emplace_back(name, Node{});
-        next_ = {&object.members.back().second, step_into(open_.back().pointer, name)};
+        object.keys.push_back(name);
+        object.items.emplace_back();
+        next_ = {&object.items.back(), step_into(open_.back().pointer, name)};
         return true;
     }
 
@@ -174,9 +175,8 @@ Fault syntax_fault(std::string_view text, const TreeBuilder& builder, int line) 
 }  // namespace
 
 const Node* Node::find(std::string_view key) const {
-    const auto found =
-        std::ranges::find(members, key, [](const auto& member) { return std::string_view(member.first); });
-    return found == members.end() ? nullptr : &found->second;
+    const auto found = std::ranges::find(keys, key);
+    return found == keys.end() ? nullptr : &items[static_cast<std::size_t>(found - keys.begin())];
 }
 
 std::string describe(const Node& node) {

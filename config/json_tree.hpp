@@ -4,8 +4,6 @@
 
 #include <string>
 #include <string_view>
-#include <utility>
-#include <variant>
 #include <vector>
 
 #include "config/fault.hpp"
@@ -20,9 +18,9 @@ struct Node {
     int line = 0;  // from 1
     bool truth = false;
     double number = 0.0;
-    std::string text;  // of a text; of a number as it is written
+    std::string text;               // of a text; of a number as it is written
+    std::vector<std::string> keys;  // of an object: the keys of its items, unique, in the file's order
     std::vector<Node> items;
-    std::vector<std::pair<std::string, Node>> members;  // in the file's order, keys unique
 
     const Node* find(std::string_view key) const;
 };

@@ -170,7 +170,7 @@ constexpr std::array plant_rows{
     Key{"time", "zone", text, "", "the plant's", "zone of times written without one"},
 
     Key{"target", "pump", text, "", "", "id of the pump it is measured at"},
-    Key{"target", "section", text, "", "", "id of the section, with pump"},
+    Key{"target", "section", text, "", "", "id of the section, of this pump, the feed's or the row's"},
     Key{"target", "reservoir", text, "", "", "id of the reservoir it is measured at"},
     Key{"target", "drain_group", text, "", "", "the drain group it is measured for"},
     Key{"target", "quantity", text, "", "required", "what is measured: outlet_pressure, shaft_speed, ..."},

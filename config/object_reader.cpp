@@ -26,13 +26,14 @@ ObjectReader::ObjectReader(const Node& node, std::string pointer, std::string_vi
 
 void ObjectReader::refuse_unknown_keys() const {
     const std::vector<std::string_view> known = key_names(object_);
-    for (const auto& [name, value] : node_.members) {
+    for (std::size_t i = 0; i < node_.keys.size(); ++i) {
+        const std::string& name = node_.keys[i];
         if (std::ranges::find(known, name) != known.end()) continue;
         const std::string_view nearest = nearest_name(name, known);
         const std::string wanted = nearest.empty() ? fmt::format("one of {}", fmt::join(known, ", "))
                                                    : fmt::format("\"{}\", which is the nearest known key", nearest);
         faults_.push_back({.pointer = step_into(pointer_, name),
-                           .line = value.line,
+                           .line = node_.items[i].line,
                            .column = 0,
                            .found = fmt::format("unknown key \"{}\"", name),
                            .wanted = wanted,

@@ -76,10 +76,9 @@ public:
     template <typename Reads>
     void each_named(std::string_view key, Reads reads) const {
         const Node* node = given(key, Node::Kind::object);
-        if (node == nullptr) return;
-        for (const auto& [name, item] : node->members) {
-            ObjectReader reader(item, step_into(place(key), name), row(key).of, faults_);
-            reads(name, reader);
+        for (std::size_t i = 0; node != nullptr && i < node->keys.size(); ++i) {
+            ObjectReader reader(node->items[i], step_into(place(key), node->keys[i]), row(key).of, faults_);
+            reads(node->keys[i], reader);
         }
     }
 

@@ -199,7 +199,8 @@ PlantReading read_plant(std::string_view text) {
 PlantReading read_plant_file(const std::filesystem::path& path) {
     std::error_code ignored;
     std::ifstream file;
-    if (!std::filesystem::is_directory(path, ignored)) file.open(path, std::ios::binary);  // a folder opens, then throws
+    if (!std::filesystem::is_directory(path, ignored))
+        file.open(path, std::ios::binary);  // a folder opens, then throws
     const std::string text{std::istreambuf_iterator<char>(file), {}};
     if (!file.is_open() || file.bad()) {
         Fault fault{.pointer = "",

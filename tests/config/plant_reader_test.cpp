@@ -3,6 +3,8 @@
 #include <gmock/gmock.h>
 #include <gtest/gtest.h>
 
+#include <random>
+
 #include "tests/config/patched_plant.hpp"
 
 namespace slipledger::config {
@@ -85,6 +87,7 @@ TEST(PlantReader, ReadsFeedsWithTheirMapping) {
         R"([{"op": "add", "path": "/feeds/1/time", "value": {"column": "Zeit", "pattern": "%d.%m.%Y %H:%M"}},
             {"op": "add", "path": "/feeds/1/delimiter", "value": "tab"},
             {"op": "add", "path": "/feeds/1/layout", "value": "long"},
+            {"op": "add", "path": "/feeds/1/columns/P/section", "value": "A"},
             {"op": "add", "path": "/feeds/1/corrects", "value": "hall"}])");
     ASSERT_TRUE(reading) << told(reading);
     const Feed& hall = reading.plant->feeds[0];
@@ -99,6 +102,7 @@ TEST(PlantReader, ReadsFeedsWithTheirMapping) {
     EXPECT_EQ(files.section, "B");
     EXPECT_EQ(files.corrects, "hall");
     EXPECT_EQ(files.columns.at("P").quantity, Quantity::outlet_pressure);
+    EXPECT_EQ(files.columns.at("P").section, "A");  // of the feed's pump
     EXPECT_EQ(files.time.pattern, "%d.%m.%Y %H:%M");
 }
 
@@ -154,6 +158,22 @@ TEST(PlantReader, TellsThatAFileCannotBeRead) {
     ASSERT_EQ(reading.faults.size(), 1U);
     EXPECT_EQ(reading.faults[0].code, "unreadable");
     EXPECT_FALSE(read_plant_file("/"));
+}
+
+TEST(PlantReader, SurvivesAFileCutOrSpoiledAnywhere) {
+    const std::string whole = sound_plant();
+    for (std::size_t length = 0; length < whole.size(); length += 7) {
+        const PlantReading reading = read_plant(std::string_view(whole).substr(0, length));
+        EXPECT_EQ(reading.plant.has_value(), reading.faults.empty());
+        EXPECT_FALSE(reading) << "cut at " << length;
+    }
+    std::mt19937 random(20260301);
+    for (int round = 0; round < 3000; ++round) {
+        std::string spoiled = whole;
+        for (int i = 0; i < 3; ++i) spoiled[random() % spoiled.size()] = static_cast<char>(random() % 256);
+        const PlantReading reading = read_plant(spoiled);
+        EXPECT_EQ(reading.plant.has_value(), reading.faults.empty()) << "round " << round << " of seed 20260301";
+    }
 }
 
 struct Spoiled {
@@ -271,6 +291,9 @@ constexpr Spoiled spoiled[] = {
      "unknown-reference"},
     {"FeedOfAnUnknownSection", R"([{"op":"replace","path":"/feeds/1/section","value":"C"}])", "/feeds/1/section",
      "unknown-reference"},
+    {"FeedOfASectionOfNoPump", R"([{"op":"remove","path":"/feeds/1/pump"}])", "/feeds/1/section", "missing"},
+    {"ColumnOfAnUnknownSectionOfTheFeedsPump", R"([{"op":"add","path":"/feeds/1/columns/P/section","value":"C"}])",
+     "/feeds/1/columns/P/section", "unknown-reference"},
     {"TagOfAnUnknownPump", R"([{"op":"replace","path":"/feeds/0/tags/HPU2.PT1/pump","value":"press2"}])",
      "/feeds/0/tags/HPU2.PT1/pump", "unknown-reference"},
     {"TagOfNoPlace", R"([{"op":"remove","path":"/feeds/0/tags/HPU2.PT1/pump"}])", "/feeds/0/tags/HPU2.PT1", "missing"},
