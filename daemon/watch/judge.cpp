@@ -34,13 +34,22 @@ std::optional<std::int32_t> stored_until(const ledger::Reader& reader, const led
     return until;
 }
 
+// Readings changed up to the mark's end; a fact that begins within the mark changes everything after it.
+Span changed_by(const ledger::Mark& mark, std::span<const ledger::Event> events, Instant newest) {
+    Span changed{mark.from, mark.to};
+    for (const ledger::Event& event : events)
+        if (changes_facts(event) && event.at >= mark.from && event.at <= mark.to) changed.to = newest;
+    return changed;
+}
+
 // Threads: one pass, then gone.
 class PumpPass {
 public:
     PumpPass(const ledger::Reader& reader, const config::Plant& plant, const ledger::Directory& directory,
-             const config::Pump& pump, const PlantDays& days, const PassSpan& pass, Instant oldest)
+             const config::Pump& pump, const PlantDays& days, const PassSpan& pass, Instant oldest,
+             std::vector<ledger::Event> events)
         : reader_(reader), plant_(plant), directory_(directory), pump_(pump), days_(days), pass_(pass), oldest_(oldest),
-          events_(reader.events(pump.id)), told_(reader.notices(pump.id)),
+          events_(std::move(events)), told_(reader.notices(pump.id)),
           facts_(reader.day_facts(directory.pumps.at(pump.id), pass.first_date - analytics::usual_days,
                                   pass.last_date + 1)) {}
 
@@ -161,11 +170,12 @@ ledger::AnalysisResult judge_pump(const ledger::Reader& reader, const config::Pl
     input.lateness = plant.lateness;
     input.oldest = *oldest;
     input.newest = *newest;
-    input.mark = {mark.from, mark.to};
+    std::vector<ledger::Event> events = reader.events(pump->id);
+    input.mark = changed_by(mark, events, *newest);
     input.stored_until = stored_until(reader, directory, pump->id);
     const auto pass = pass_span(input, days);
     if (!pass) return result;
-    PumpPass(reader, plant, directory, *pump, days, *pass, *oldest).run(result);
+    PumpPass(reader, plant, directory, *pump, days, *pass, *oldest, std::move(events)).run(result);
     std::ranges::stable_sort(result.notices, {}, &ledger::Notice::at);
     if (pass->cut_short) result.mark_again_from = pass->boundary;
     return result;

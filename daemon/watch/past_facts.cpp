@@ -77,7 +77,8 @@ void take_section(const json& facts, config::Section& section) {
     take(facts, "compensator_bar", section.compensator_bar);
     take(facts, "relief_bar", section.relief_bar);
     section.sensors.clear();
-    for (const auto& [name, sensor] : facts.value("sensors", json::object()).items())
+    const json sensors = facts.value("sensors", json::object());
+    for (const auto& [name, sensor] : sensors.items())
         if (const auto quantity = analytics::quantity_named(name)) section.sensors[*quantity] = sensor_of(sensor);
 }
 

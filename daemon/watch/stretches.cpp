@@ -14,10 +14,11 @@ using ledger::FactsFrom;
 using ledger::Life;
 
 // Kinds of events that change what is seen of a section without changing the plant file's facts.
+constexpr std::array<std::string_view, 3> unsettling{"oil-changed", "compensator-set", "instrument-changed"};
+
 bool unsettles(const Event& event, std::string_view section) {
-    constexpr std::array<std::string_view, 3> kinds{"oil-changed", "compensator-set", "instrument-changed"};
     const bool meant = event.section.empty() || event.section == section;
-    return meant && std::ranges::find(kinds, event.kind) != kinds.end();
+    return meant && std::ranges::find(unsettling, event.kind) != unsettling.end();
 }
 
 // What held at `at`: today's plant file from the last change on.
@@ -71,6 +72,11 @@ std::vector<Stretch> stretches_of(const config::Pump& today, const config::Secti
     begin_at(Instant::min());
     for (const Instant cut : cuts_of(lives, events, facts, today, section.id)) begin_at(cut);
     return stretches;
+}
+
+bool changes_facts(const Event& event) {
+    return event.kind == "replaced" || event.kind == "plant-changed" ||
+           std::ranges::find(unsettling, event.kind) != unsettling.end();
 }
 
 std::size_t stretch_at(std::span<const Stretch> stretches, Instant at) {

@@ -28,6 +28,9 @@ struct Stretch {
 std::vector<Stretch> stretches_of(const config::Pump& today, const config::Section& section,
                                   std::span<const ledger::Event> events, std::optional<analytics::Instant> oldest);
 
+// Whether the event changes what holds from its time on, so that everything after it is judged anew.
+bool changes_facts(const ledger::Event& event);
+
 // Index of the stretch that covers `at`.
 std::size_t stretch_at(std::span<const Stretch> stretches, analytics::Instant at);
 
