@@ -9,7 +9,7 @@
 #include <numbers>
 #include <stdexcept>
 
-#include "tools/plantsim/veneer_mill.hpp"
+#include "tools/plantsim/gap_sets.hpp"
 
 namespace slipledger::plantsim {
 namespace {

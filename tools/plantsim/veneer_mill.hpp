@@ -9,8 +9,4 @@ namespace slipledger::plantsim {
 
 PlantDrawing veneer_mill();
 
-// A mineral-oil pressure-compensated axial piston rotating group of 140 cm3/rev, healthy. Also what the load
-// generators leak with.
-std::vector<Gap> axial_piston_gaps(double size = 1.0);
-
 }  // namespace slipledger::plantsim
