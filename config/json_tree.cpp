@@ -13,7 +13,7 @@ namespace {
 
 constexpr std::size_t deepest = 32;  // no plant file needs more; keeps hostile nesting from using up the stack
 
-// Reads the text and tells how far the lexer has come, which is what gives every value its line.
+// Reads the text and tells how far the lexer has come, which is what gives every value its line. Threads: a value.
 class CountingIterator {
 public:
     using iterator_category = std::input_iterator_tag;
@@ -37,6 +37,7 @@ private:
     int* line_;
 };
 
+// Fills the tree as the parser names what it meets. Threads: one thread; lives within read_json.
 class TreeBuilder {
 public:
     using Json = nlohmann::json;

@@ -33,7 +33,7 @@ std::string step_into(const std::string& pointer, std::string_view key);
 std::string step_into(const std::string& pointer, std::size_t index);
 
 // The tree of a text with // and /* */ comments. A syntax error is one fault with line and column and no tree; keys
-// written twice are faults beside the tree, which keeps the first.
+// written twice are faults beside the tree, which keeps the first. Threads: a value, share freely.
 struct JsonReading {
     Node root;
     std::vector<Fault> faults;

@@ -5,11 +5,16 @@
 #include <filesystem>
 #include <fstream>
 #include <iterator>
+#include <map>
 #include <nlohmann/json.hpp>
+#include <optional>
 #include <set>
 
+#include "config/plant_reader.hpp"
+#include "config/written_values.hpp"
 #include "schema/schema.hpp"
 #include "tests/config/documented_keys.hpp"
+#include "tests/config/patched_plant.hpp"
 
 namespace slipledger::config {
 namespace {
@@ -50,6 +55,64 @@ TEST(Keys, NameOnlyObjectsThatHaveKeys) {
         const bool nested = key.kind == KeyKind::object || key.kind == KeyKind::list || key.kind == KeyKind::map;
         EXPECT_EQ(nested, !key_names(key.of).empty()) << key.object << "/" << key.name;
     }
+}
+
+// The plant the defaults are tried in: every object whose keys have defaults is there.
+nlohmann::json plant_for_defaults() {
+    auto plant = nlohmann::json::parse(sound_plant());
+    plant["economics"] = {{"energy_price_per_kwh", 0.2}, {"currency", "EUR"}};
+    plant["pumps"][0]["spare"] = {{"part_number", "RG-71"}};
+    plant["pumps"][0]["sensors"]["delivery_flow"] = nlohmann::json::object();
+    return plant;
+}
+
+std::string place_of(const Key& key) {
+    const std::map<std::string_view, std::string> places{
+        {"plant", ""},
+        {"store", "/store"},
+        {"fluid", "/fluids/site oil"},
+        {"pump", "/pumps/1"},
+        {"section", "/pumps/1/sections/0"},
+        {"motor", "/pumps/0/motor"},
+        {"steady", "/pumps/0/steady"},
+        {"baseline", "/pumps/0/baseline"},
+        {"sensor", "/pumps/0/sensors/delivery_flow"},
+        {"spare", "/pumps/0/spare"},
+        {"feed", key.name == "reply" || key.name == "idle_timeout" ? "/feeds/0" : "/feeds/1"},
+        {"target", "/feeds/1/columns/P"},
+        {"webhook", "/alerts/webhooks/0"},
+        {"economics", "/economics"},
+    };
+    return places.at(key.object) + "/" + std::string(key.name);
+}
+
+// The default as a value that can be written into a plant file; none where the table only describes it.
+std::optional<nlohmann::json> written_default(const Key& key) {
+    const bool is_word = key.kind == KeyKind::choice || key.kind == KeyKind::duration;
+    const bool is_value = key.kind == KeyKind::number || key.kind == KeyKind::whole || key.kind == KeyKind::truth;
+    const std::vector<std::string_view> words = words_of(key);
+    if (key.kind == KeyKind::choice && std::ranges::find(words, key.fallback) == words.end()) return std::nullopt;
+    if (key.kind == KeyKind::duration && !parse_duration(key.fallback)) return std::nullopt;
+    if (is_word) return nlohmann::json(key.fallback);
+    const auto value = nlohmann::json::parse(key.fallback, nullptr, false);
+    return is_value && !value.is_discarded() ? std::optional(value) : std::nullopt;
+}
+
+TEST(Keys, HaveTheDefaultsTheTableSays) {
+    const PlantReading without = read_plant(plant_for_defaults().dump());
+    ASSERT_TRUE(without) << told(without);
+    int tried = 0;
+    for (const Key& key : plant_keys()) {
+        const auto value = written_default(key);
+        if (!value) continue;
+        auto plant = plant_for_defaults();
+        plant[nlohmann::json::json_pointer(place_of(key))] = *value;
+        const PlantReading with = read_plant(plant.dump());
+        ASSERT_TRUE(with) << place_of(key) << "\n" << told(with);
+        EXPECT_EQ(*with.plant, *without.plant) << place_of(key) << " = " << *value;
+        ++tried;
+    }
+    EXPECT_GE(tried, 40);
 }
 
 TEST(Keys, SayWhatIsWantedWithUnitRangeAndMeaning) {
