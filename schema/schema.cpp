@@ -18,9 +18,15 @@ std::vector<Migration> ledger_migrations() {
     return migrations;
 }
 
-std::string_view plant_schema() { return text_named("plant.schema.json"); }
-std::string_view reading_schema() { return text_named("reading.schema.json"); }
-std::string_view alert_schema() { return text_named("alert.schema.json"); }
+std::string_view plant_schema() {
+    return text_named("plant.schema.json");
+}
+std::string_view reading_schema() {
+    return text_named("reading.schema.json");
+}
+std::string_view alert_schema() {
+    return text_named("alert.schema.json");
+}
 
 std::string_view text_named(std::string_view name) {
     for (const Text& text : embedded_texts())

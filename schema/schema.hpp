@@ -1,5 +1,5 @@
-// The texts of this folder as the executables carry them: the ledger's migrations in their order, and the published schemas
-// of the plant file, of readings and of the alert log. No file of schema/ is needed at run time.
+// The texts of this folder as the executables carry them: the ledger's migrations in their order, and the published
+// schemas of the plant file, of readings and of the alert log. No file of schema/ is needed at run time.
 #pragma once
 
 #include <string_view>
