@@ -17,11 +17,15 @@ std::optional<AlarmEdge> edge_between(Level before, Level after) {
 
 double limit_of(const Ladder& ladder, Level level) {
     switch (level) {
-        case Level::watch: return ladder.watch;
-        case Level::plan: return ladder.plan;
-        case Level::act: return ladder.act;
+        case Level::watch:
+            return ladder.watch;
+        case Level::plan:
+            return ladder.plan;
+        case Level::act:
+            return ladder.act;
         case Level::unjudged:
-        case Level::sound: break;
+        case Level::sound:
+            break;
     }
     return unknown;
 }

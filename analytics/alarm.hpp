@@ -1,6 +1,6 @@
 // When an alarm is raised, worsens, eases and returns to normal: one state machine per rule, fed with values in data
-// time, with on-delay, off-delay and deadband so that it neither flickers nor floods. It knows no operator: acknowledging and
-// shelving are acts laid over the episodes it makes (IEC 62682 words; see daemon/watch).
+// time, with on-delay, off-delay and deadband so that it neither flickers nor floods. It knows no operator:
+// acknowledging and shelving are acts laid over the episodes it makes (IEC 62682 words; see daemon/watch).
 #pragma once
 
 #include <array>
@@ -26,11 +26,15 @@ enum class Rule : std::uint8_t {
 };
 inline constexpr std::size_t rule_count = 9;
 inline constexpr std::array<std::string_view, rule_count> rule_names{
-    "leakage-ratio", "efficiency", "hours-in-hand", "step-change", "drain-share",
-    "over-temperature", "case-pressure", "inlet-vacuum", "instrument-suspect"};
-constexpr std::string_view name_of(Rule rule) { return rule_names[static_cast<std::size_t>(rule)]; }
+    "leakage-ratio",    "efficiency",    "hours-in-hand", "step-change",       "drain-share",
+    "over-temperature", "case-pressure", "inlet-vacuum",  "instrument-suspect"};
+constexpr std::string_view name_of(Rule rule) {
+    return rule_names[static_cast<std::size_t>(rule)];
+}
 // Rules that decide the level; the others raise alarms only.
-constexpr bool decides_level(Rule rule) { return rule <= Rule::step_change; }
+constexpr bool decides_level(Rule rule) {
+    return rule <= Rule::step_change;
+}
 
 enum class AlarmEdge : std::uint8_t { raised, worsened, eased, returned };
 constexpr std::string_view name_of(AlarmEdge edge) {
@@ -42,16 +46,16 @@ constexpr std::string_view name_of(AlarmEdge edge) {
 struct AlarmChange {
     Rule rule = Rule::leakage_ratio;
     AlarmEdge edge = AlarmEdge::raised;
-    Level level = Level::watch;     // after the change; of `returned` the level it had
-    Instant at;                     // data time of the change: end of the summary or day that showed it
-    Instant began;                  // of the episode
+    Level level = Level::watch;  // after the change; of `returned` the level it had
+    Instant at;                  // data time of the change: end of the summary or day that showed it
+    Instant began;               // of the episode
     std::int32_t life = 1;
-    double value = unknown;         // what was judged
-    double limit = unknown;         // what it passed
+    double value = unknown;  // what was judged
+    double limit = unknown;  // what it passed
 };
 
-// One judgement of a rule. `beyond`: the most urgent level whose limit is passed; `within`: the most urgent level not yet
-// left, its deadband counted. `unjudged` in both: nothing passed, all left.
+// One judgement of a rule. `beyond`: the most urgent level whose limit is passed; `within`: the most urgent level not
+// yet left, its deadband counted. `unjudged` in both: nothing passed, all left.
 struct RuleJudgement {
     Level beyond = Level::unjudged;
     Level within = Level::unjudged;
@@ -69,17 +73,16 @@ struct RuleTiming {
 // Not computed: a lookup. Returns the ladder's unit. Source: plant file.
 double limit_of(const Ladder& ladder, Level level);
 
-// Judges a value that is worse the higher it is: beyond a limit when above it, still within while above limit less deadband.
-// NaN passes nothing.
-// Example: watch 80, plan 90, deadband 3: 85 -> beyond watch, within watch; 78 -> beyond nothing, within watch.
-// Source: IEC 62682 (deadband).
+// Judges a value that is worse the higher it is: beyond a limit when above it, still within while above limit less
+// deadband. NaN passes nothing. Example: watch 80, plan 90, deadband 3: 85 -> beyond watch, within watch; 78 -> beyond
+// nothing, within watch. Source: IEC 62682 (deadband).
 RuleJudgement judge_ladder(double value, const Ladder& ladder);
 
 // The state of one rule. Feed it judgements in time order; it answers with the change, if one came of it.
 //
-// A level is raised once its limit has been passed for the on-delay and the wanted number of judgements in a row; raising
-// one raises those below. It is left once the value has been inside, deadband counted, for the off-delay and as many judgements.
-// Source: IEC 62682 (on-delay, off-delay, deadband).
+// A level is raised once its limit has been passed for the on-delay and the wanted number of judgements in a row;
+// raising one raises those below. It is left once the value has been inside, deadband counted, for the off-delay and as
+// many judgements. Source: IEC 62682 (on-delay, off-delay, deadband).
 //
 // Threads: one at a time.
 class AlarmState {
@@ -94,6 +97,7 @@ public:
     // Data time the episode was raised. Not computed: reads the state.
     Instant began() const { return began_; }
 
+    // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
         io(self.latches_, self.began_);

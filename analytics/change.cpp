@@ -8,10 +8,10 @@ namespace slipledger::analytics {
 
 namespace {
 
-constexpr double looked_for = 3.0;    // standard deviations looked for
-constexpr double most_surprise = 4.0; // counted of one summary
-constexpr double enough = 8.0;        // two net summaries at three standard deviations
-constexpr double done_within_h = 8.0; // running hours
+constexpr double looked_for = 3.0;     // standard deviations looked for
+constexpr double most_surprise = 4.0;  // counted of one summary
+constexpr double enough = 8.0;         // two net summaries at three standard deviations
+constexpr double done_within_h = 8.0;  // running hours
 const double least_step = std::log(1.3);
 constexpr Milliseconds same_hour = std::chrono::hours(1);
 

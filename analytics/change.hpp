@@ -45,11 +45,11 @@ public:
     // Not computed: reads the state.
     const Step& step() const { return step_; }
 
+    // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
-        io(self.up_, self.down_, self.before_, self.departure_, self.following_, self.explained_,
-           self.explained_at_, self.step_.active, self.step_.attributed, self.step_.began, self.step_.ln_before,
-           self.step_.ln_size);
+        io(self.up_, self.down_, self.before_, self.departure_, self.following_, self.explained_, self.explained_at_,
+           self.step_.active, self.step_.attributed, self.step_.began, self.step_.ln_before, self.step_.ln_size);
     }
 
 private:

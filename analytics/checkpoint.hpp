@@ -16,7 +16,7 @@
 namespace slipledger::analytics {
 
 template <typename T>
-inline constexpr bool is_plain = std::is_trivially_copyable_v<T> && std::has_unique_object_representations_v<T>;
+inline constexpr bool is_plain = std::is_trivially_copyable_v<T>&& std::has_unique_object_representations_v<T>;
 template <>
 inline constexpr bool is_plain<double> = true;
 

@@ -24,14 +24,16 @@ namespace {
 constexpr std::uint32_t checkpoint_version = 0x534c0001;  // raise the low half whenever a field is added or moved
 constexpr double hours_per_day = 24.0;
 constexpr double quantile_90 = 1.2815515655446004;
-constexpr std::int32_t drift_days_wanted = 7;
-constexpr double range_change = 0.2;              // in ln dp, ln viscosity: a new operating range
-constexpr double long_gap_h = 3.0;                // without any summary: running hours are estimated by usual duty
-constexpr double impossible_percent = 50.0;       // of running points: the instrument first
-constexpr double step_deadband = 0.05;            // of a ratio limit
+constexpr std::int32_t drift_days_wanted = 7;  // in a row, to establish a drift and to give it up again
+constexpr double range_change = 0.2;           // in ln dp, ln viscosity: a new operating range
+constexpr double long_gap_h = 3.0;             // without any summary: running hours are estimated by usual duty
+constexpr double impossible_percent = 50.0;    // of running points: the instrument first
+constexpr double step_deadband = 0.05;         // of a ratio limit
 constexpr RuleTiming two_judged_days{.judgements = 2};
 
-double hours(Milliseconds span) { return std::chrono::duration<double, std::ratio<3600>>(span).count(); }
+double hours(Milliseconds span) {
+    return std::chrono::duration<double, std::ratio<3600>>(span).count();
+}
 
 // What a day gathers from its summaries; weights are judged hours.
 struct DayTally {
@@ -62,11 +64,15 @@ struct SummaryMeans {
 
 SummaryMeans means_of(const Summary& summary, const WearFilter& filter) {
     const Moments& m = summary.judged[summary.judged[1].count > summary.judged[0].count ? 1 : 0];
-    return {.pressure_rise_bar = m.dp_bar, .viscosity_cst = m.viscosity_cst, .temperature_c = m.temperature_c,
+    return {.pressure_rise_bar = m.dp_bar,
+            .viscosity_cst = m.viscosity_cst,
+            .temperature_c = m.temperature_c,
             .distance = filter.distance_from_seen(m)};
 }
 
-bool has_judged(const Summary& summary) { return summary.judged[0].count + summary.judged[1].count > 0; }
+bool has_judged(const Summary& summary) {
+    return summary.judged[0].count + summary.judged[1].count > 0;
+}
 
 // Share of the points of a turning pump that contradict each other, in percent; NaN where it did not turn.
 double percent_impossible(const Summary& summary) {
@@ -91,7 +97,7 @@ struct Course::State {
     std::array<AlarmState, rule_count> alarms;
     double life_running_h = 0.0;
     double life_judged_h = 0.0;
-    double fed_running_h = 0.0;   // since the end of run-in
+    double fed_running_h = 0.0;  // since the end of run-in
     double fed_judged_h = 0.0;
     double waiting_running_h = 0.0;  // since the filter was last carried forward
     Instant carried_to;
@@ -100,7 +106,8 @@ struct Course::State {
     bool carried_any = false;
     bool above_sound = false;
     Instant onset;
-    std::int32_t drift_days = 0;
+    bool drift_established = false;
+    std::int32_t drift_days = 0;  // judged days in a row that speak against that
     std::int32_t last_date = 0;
     std::vector<AlarmChange> changes;
 
@@ -109,13 +116,14 @@ struct Course::State {
         io(self.life.number, self.life.since, self.filter, self.change, self.slope, self.duty, self.today, self.alarms,
            self.life_running_h, self.life_judged_h, self.fed_running_h, self.fed_judged_h, self.waiting_running_h,
            self.carried_to, self.seen_to, self.seen_any, self.carried_any, self.above_sound, self.onset,
-           self.drift_days, self.last_date);
+           self.drift_established, self.drift_days, self.last_date);
     }
 
     AlarmState& alarm(Rule rule) { return alarms[static_cast<std::size_t>(rule)]; }
     void judge(Rule rule, const RuleJudgement& judgement, const Ladder& ladder, const RuleTiming& timing, Instant at);
     void judge_summary(const Summary& summary, Instant end);
     void judge_step(Instant at);
+    void judge_drift();
     void judge_day(const DayVerdict& day, const RatedEfficiency& efficiency);
     RuleJudgement judge_hours(const DayVerdict& day) const;
 
@@ -241,11 +249,11 @@ void Course::State::gather(const SummaryVerdict& verdict, const Summary& summary
     today.excess += weight * verdict.excess_lpm;
     today.power += weight * verdict.leakage_kw;
     const SummaryMeans means = means_of(summary, filter);
-    const double slip = slip_coefficient(
-        {.leakage_lpm = verdict.leakage_lpm,
-         .viscosity_pas = means.viscosity_cst * spec.fluid.density_kgm3(means.temperature_c) * 1e-6,
-         .displacement_cm3 = spec.displacement_cm3,
-         .pressure_rise_bar = means.pressure_rise_bar});
+    const double slip =
+        slip_coefficient({.leakage_lpm = verdict.leakage_lpm,
+                          .viscosity_pas = means.viscosity_cst * spec.fluid.density_kgm3(means.temperature_c) * 1e-6,
+                          .displacement_cm3 = spec.displacement_cm3,
+                          .pressure_rise_bar = means.pressure_rise_bar});
     if (!std::isfinite(slip)) return;
     today.slip += weight * slip;
     today.slip_weight += weight;
@@ -279,8 +287,7 @@ HoursInHand Course::State::hours_in_hand(const RatedEfficiency& efficiency) cons
     HoursInHand left;
     if (!filter.primed() || learning()) return left;
     const RuleLimits& limits = spec.limits;
-    const double flow =
-        theoretical_flow_lpm(spec.displacement_cm3, spec.reference.speed_rpm, spec.max_stroke_fraction);
+    const double flow = theoretical_flow_lpm(spec.displacement_cm3, spec.reference.speed_rpm, spec.max_stroke_fraction);
     const double healthy_percent = 100.0 * std::exp(filter.healthy_leakage(spec.reference).ln) / flow;
     const std::array<std::pair<Rule, double>, 3> ends{
         {{Rule::leakage_ratio, limits.leakage_ratio.act},
@@ -303,7 +310,7 @@ HoursInHand Course::State::hours_in_hand(const RatedEfficiency& efficiency) cons
                                                         .ln_limit = std::log(first)});
     const auto finite = [](double value) { return std::isfinite(value) ? value : unknown; };
     left.low = finite(passage.low_h);
-    if (drift_days < drift_days_wanted && std::exp(belief.mean(ln_wear)) < first) return left;
+    if (!drift_established && std::exp(belief.mean(ln_wear)) < first) return left;
     left.mid = finite(passage.mid_h);
     left.high = finite(passage.high_h);
     return left;
@@ -311,13 +318,14 @@ HoursInHand Course::State::hours_in_hand(const RatedEfficiency& efficiency) cons
 
 Trend Course::State::trend() const {
     Trend trend;
-    trend.established = drift_days >= drift_days_wanted;
+    trend.established = drift_established;
     if (above_sound) trend.onset = onset;
     if (!filter.primed()) return trend;
     const WearBelief& belief = filter.belief();
     const double per_drift = std::exp(belief.mean(ln_wear)) * 1000.0 / hours_per_day;
     const double reach = quantile_90 * std::sqrt(belief.covariance(drift, drift));
-    trend.per_1000_h = {.value = per_drift * belief.mean(drift), .low = per_drift * (belief.mean(drift) - reach),
+    trend.per_1000_h = {.value = per_drift * belief.mean(drift),
+                        .low = per_drift * (belief.mean(drift) - reach),
                         .high = per_drift * (belief.mean(drift) + reach)};
     return trend;
 }
@@ -331,8 +339,7 @@ DayVerdict Course::State::day_so_far(const DaySpan& day, const RatedEfficiency& 
     verdict.efficiency_baseline = efficiency.healthy;
     verdict.efficiency_at_rated = efficiency.at_rated;
     if (!change.step().active)
-        verdict.clearance_growth_percent =
-            100.0 * clearance_growth(filter.coefficients(), verdict.leakage_ratio.value);
+        verdict.clearance_growth_percent = 100.0 * clearance_growth(filter.coefficients(), verdict.leakage_ratio.value);
     if (today.weight > 0.0) {
         verdict.leakage_lpm = today.leakage / today.weight;
         verdict.excess_lpm = today.excess / today.weight;
@@ -349,6 +356,15 @@ DayVerdict Course::State::day_so_far(const DaySpan& day, const RatedEfficiency& 
     verdict.learning_h_left = std::max(spec.baseline.least.h - fed_judged_h, 0.0);
     verdict.share_judged_30d = share_judged(day.date);
     return verdict;
+}
+
+void Course::State::judge_drift() {
+    const WearBelief& belief = filter.belief();
+    const double slowest = belief.mean(drift) - quantile_90 * std::sqrt(belief.covariance(drift, drift));
+    drift_days = (slowest > 0.0) == drift_established ? 0 : drift_days + 1;
+    if (drift_days < drift_days_wanted) return;
+    drift_established = !drift_established;
+    drift_days = 0;
 }
 
 // What follows from the alarms as they stand: level, reason, trend and cause.
@@ -370,7 +386,7 @@ RuleJudgement Course::State::judge_hours(const DayVerdict& day) const {
     RuleJudgement judgement{.value = day.hours_in_hand.low};
     const double usual = duty.running_h_per_day(day.day.date);
     const double per_day = std::isfinite(spec.duty_h_per_week) ? spec.duty_h_per_week / 7.0 : usual;
-    if (drift_days < drift_days_wanted || !(per_day > 0.0)) return judgement;
+    if (!drift_established || !(per_day > 0.0)) return judgement;
     const double days_left = day.hours_in_hand.low / per_day;
     double wanted = spec.spare_lead_days;
     if (spec.second_next_planned_stop)
@@ -393,7 +409,9 @@ void Course::State::judge_day(const DayVerdict& day, const RatedEfficiency& effi
     daily(Rule::hours_in_hand, judge_hours(day), {});
 }
 
-Course::Course(Basis basis) : state_(std::make_unique<State>()) { state_->basis = basis; }
+Course::Course(Basis basis) : state_(std::make_unique<State>()) {
+    state_->basis = basis;
+}
 Course::~Course() = default;
 Course::Course(Course&&) noexcept = default;
 Course& Course::operator=(Course&&) noexcept = default;
@@ -434,8 +452,8 @@ SummaryVerdict Course::take(const Summary& summary) {
     if (fit && !running_in) s.feed(summary, end);
     SummaryVerdict verdict = s.verdict_on(summary, distance);
     s.gather(verdict, summary);
-    if (fit && !running_in) s.slope.add({.leakage_lpm = verdict.leakage_lpm,
-                                         .healthy_lpm = verdict.leakage_lpm - verdict.excess_lpm});
+    if (fit && !running_in)
+        s.slope.add({.leakage_lpm = verdict.leakage_lpm, .healthy_lpm = verdict.leakage_lpm - verdict.excess_lpm});
     std::tie(verdict.level, verdict.reason) = s.standing(s.last_date);
     return verdict;
 }
@@ -450,11 +468,7 @@ DayVerdict Course::finish_day(const DaySpan& day) {
     State& s = *state_;
     const RatedEfficiency efficiency = rated_efficiency(s.filter, s.spec, s.basis);
     const bool judged = s.today.judged && !s.learning();
-    if (judged) {
-        const WearBelief& belief = s.filter.belief();
-        const double fastest = belief.mean(drift) - quantile_90 * std::sqrt(belief.covariance(drift, drift));
-        s.drift_days = fastest > 0.0 ? s.drift_days + 1 : 0;
-    }
+    if (judged) s.judge_drift();
     DayVerdict verdict = s.day_so_far(day, efficiency);
     if (judged) s.judge_day(verdict, efficiency);
     const bool above = s.most_urgent() > Level::sound;
@@ -467,7 +481,9 @@ DayVerdict Course::finish_day(const DaySpan& day) {
     return verdict;
 }
 
-std::vector<AlarmChange> Course::drain_alarm_changes() { return std::exchange(state_->changes, {}); }
+std::vector<AlarmChange> Course::drain_alarm_changes() {
+    return std::exchange(state_->changes, {});
+}
 
 std::vector<std::byte> Course::checkpoint() const {
     CheckpointWriter writer;

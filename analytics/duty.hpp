@@ -31,6 +31,7 @@ public:
     // Source: definition.
     double running_h_per_day(std::int32_t date) const;
 
+    // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
         io(self.days_);

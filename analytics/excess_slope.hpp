@@ -1,5 +1,5 @@
-// Tells wear from an instrument: leakage of worn gaps grows with what a healthy pump would leak there, a meter's zero or a
-// pilot flow does not. Keeps the last hundred judged summaries.
+// Tells wear from an instrument: leakage of worn gaps grows with what a healthy pump would leak there, a meter's zero
+// or a pilot flow does not. Keeps the last hundred judged summaries.
 #pragma once
 
 #include <array>
@@ -21,6 +21,7 @@ public:
     // Source: method.md, 7.
     bool scales_with_leakage() const;
 
+    // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
         io(self.healthy_, self.seen_, self.count_, self.next_);

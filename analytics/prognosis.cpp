@@ -22,7 +22,9 @@ constexpr std::array<double, 5> node{-2.8569700138728056, -1.3556261799742659, 0
 constexpr std::array<double, 5> weight{0.011257411327720689, 0.22207592200561266, 0.53333333333333333,
                                        0.22207592200561266, 0.011257411327720689};
 
-double normal_share(double z) { return 0.5 * std::erfc(-z / std::numbers::sqrt2); }
+double normal_share(double z) {
+    return 0.5 * std::erfc(-z / std::numbers::sqrt2);
+}
 
 // Days times drift from ln ratio x to the limit.
 double distance_in_days(double ln_left, double power) {

@@ -1,6 +1,6 @@
-// Running hours in hand: when the leakage ratio first reaches its limit, from what the filter knows of wear and its drift,
-// over several wear laws, since which one a pump follows is not known. Simplest form: by quadrature, without random
-// numbers; what the drift may still do on its own is not in it.
+// Running hours in hand: when the leakage ratio first reaches its limit, from what the filter knows of wear and its
+// drift, over several wear laws, since which one a pump follows is not known. Simplest form: by quadrature, without
+// random numbers; what the drift may still do on its own is not in it.
 #pragma once
 
 #include "analytics/section_spec.hpp"
@@ -9,12 +9,12 @@ namespace slipledger::analytics {
 
 // Wear and drift as the filter holds them, and where it ends.
 struct WearOutlook {
-    double ln_ratio = unknown;           // x
-    double drift_per_day = unknown;      // v, per running day
-    double ratio_variance = unknown;     // of x
-    double drift_variance = unknown;     // of v
+    double ln_ratio = unknown;        // x
+    double drift_per_day = unknown;   // v, per running day
+    double ratio_variance = unknown;  // of x
+    double drift_variance = unknown;  // of v
     double covariance = 0.0;
-    double ln_limit = unknown;           // ln of the ratio not to be reached
+    double ln_limit = unknown;  // ln of the ratio not to be reached
 };
 
 // Running hours until then; infinity where never.
@@ -24,8 +24,8 @@ struct PassageQuantiles {
     double high_h = unknown;  // 90 %
 };
 
-// Share of the outlook in which the limit is reached within `hours`. Under dw/dt = rate w^k, with k at -0.6, 0, 0.6 and 1.2
-// equally likely:
+// Share of the outlook in which the limit is reached within `hours`. Under dw/dt = rate w^k, with k at -0.6, 0, 0.6
+// and 1.2 equally likely:
 //
 //   T = 24 [(L/w)^(1-k) - 1] / ((1 - k) v),   P(T <= t) = mean over k and x of Phi((E[v|x] - c / t) / sd[v|x])
 //

@@ -20,13 +20,13 @@ RatedEfficiency rated_efficiency(const WearFilter& filter, const SectionSpec& sp
     const Ranged leakage = quoted(filter.worn_leakage(at));
     const double healthy = std::exp(filter.healthy_leakage(at).ln);
     const Ranged ratio = quoted(filter.wear());
-    efficiency.now = {.value = 1.0 - leakage.value / flow, .low = 1.0 - leakage.high / flow,
-                      .high = 1.0 - leakage.low / flow};
+    efficiency.now = {
+        .value = 1.0 - leakage.value / flow, .low = 1.0 - leakage.high / flow, .high = 1.0 - leakage.low / flow};
     efficiency.healthy = 1.0 - healthy / flow;
     const double points = 100.0 * healthy / flow;
     efficiency.points_per_ratio = points;
-    efficiency.points_lost = {.value = points * (ratio.value - 1.0), .low = points * (ratio.low - 1.0),
-                              .high = points * (ratio.high - 1.0)};
+    efficiency.points_lost = {
+        .value = points * (ratio.value - 1.0), .low = points * (ratio.low - 1.0), .high = points * (ratio.high - 1.0)};
     return efficiency;
 }
 

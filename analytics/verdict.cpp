@@ -8,8 +8,8 @@ namespace slipledger::analytics {
 namespace {
 
 constexpr double quantile_90 = 1.2815515655446004;  // of the standard normal
-constexpr double least_deadband = 0.02;              // of a ratio limit
-constexpr double points_deadband = 0.05;             // of a limit on points lost
+constexpr double least_deadband = 0.02;             // of a ratio limit
+constexpr double points_deadband = 0.05;            // of a limit on points lost
 constexpr double enough_span = 1.5;
 constexpr double seldom = 0.10;
 constexpr double plain_sign = 0.7;
@@ -30,32 +30,46 @@ RuleJudgement judge_range(const Ranged& range, const Ladder& ladder, double dead
 
 std::string_view name_of(UnjudgedReason reason) {
     switch (reason) {
-        case UnjudgedReason::none: return "";
-        case UnjudgedReason::no_data: return "no-data";
-        case UnjudgedReason::learning: return "learning";
-        case UnjudgedReason::seldom_judged: return "seldom-judged";
-        case UnjudgedReason::shared_drain: return "shared-drain";
-        case UnjudgedReason::no_basis: return "no-basis";
-        case UnjudgedReason::silent: return "silent";
+        case UnjudgedReason::none:
+            return "";
+        case UnjudgedReason::no_data:
+            return "no-data";
+        case UnjudgedReason::learning:
+            return "learning";
+        case UnjudgedReason::seldom_judged:
+            return "seldom-judged";
+        case UnjudgedReason::shared_drain:
+            return "shared-drain";
+        case UnjudgedReason::no_basis:
+            return "no-basis";
+        case UnjudgedReason::silent:
+            return "silent";
     }
     return "";
 }
 
 std::string_view name_of(CauseKind cause) {
     switch (cause) {
-        case CauseKind::none: return "none";
-        case CauseKind::wear: return "wear";
-        case CauseKind::sudden_damage: return "sudden-damage";
-        case CauseKind::wear_or_instrument: return "wear-or-instrument";
-        case CauseKind::instrument: return "instrument";
-        case CauseKind::oil_or_operation: return "oil-or-operation";
+        case CauseKind::none:
+            return "none";
+        case CauseKind::wear:
+            return "wear";
+        case CauseKind::sudden_damage:
+            return "sudden-damage";
+        case CauseKind::wear_or_instrument:
+            return "wear-or-instrument";
+        case CauseKind::instrument:
+            return "instrument";
+        case CauseKind::oil_or_operation:
+            return "oil-or-operation";
     }
     return "none";
 }
 
 Ranged quoted(const LogEstimate& estimate) {
     const double reach = quantile_90 * estimate.sd;
-    return {.value = std::exp(estimate.ln), .low = std::exp(estimate.ln - reach), .high = std::exp(estimate.ln + reach)};
+    return {
+        .value = std::exp(estimate.ln), .low = std::exp(estimate.ln - reach), .high = std::exp(estimate.ln + reach)};
 }
 
 RuleJudgement judge_ratio(const Ranged& ratio, const Ladder& ladder) {

@@ -1,5 +1,5 @@
-// From estimates to words: which limit an estimate passes, what a section may be told at most on its basis, why it has no
-// level, and the simplest cause that fits. Pure decisions on values; the course of a section calls them in order.
+// From estimates to words: which limit an estimate passes, what a section may be told at most on its basis, why it has
+// no level, and the simplest cause that fits. Pure decisions on values; the course of a section calls them in order.
 #pragma once
 
 #include "analytics/alarm.hpp"
@@ -16,10 +16,9 @@ namespace slipledger::analytics {
 // Source: method.md, 5.
 Ranged quoted(const LogEstimate& estimate);
 
-// A limit L on the leakage ratio is passed when the value is above L and its low end above 1 + (L - 1) / 2; it is left once
-// the value is below L less the deadband (at least 2 % of L, the scatter of a day).
-// Example: 2.1 (1.6 to 2.7) passes 2; 2.1 (1.4 to 3.0) passes only watch, at 1.17.
-// Source: the rule's definition (design.md, 7).
+// A limit L on the leakage ratio is passed when the value is above L and its low end above 1 + (L - 1) / 2; it is left
+// once the value is below L less the deadband (at least 2 % of L, the scatter of a day). Example: 2.1 (1.6 to 2.7)
+// passes 2; 2.1 (1.4 to 3.0) passes only watch, at 1.17. Source: the rule's definition (design.md, 7).
 RuleJudgement judge_ratio(const Ranged& ratio, const Ladder& ladder);
 
 // The same for efficiency points lost: passed when the value is above L and its low end above L / 2.
@@ -30,9 +29,8 @@ RuleJudgement judge_points_lost(const Ranged& points, const Ladder& ladder);
 // The judgement with no level above `most`. Not computed: a bound.
 RuleJudgement capped(RuleJudgement judgement, Level most);
 
-// The most urgent level the section may be given: `watch` without a temperature, and by delivery while dp/mu has varied by
-// less than a factor 1.5, since displacement and leakage are then not told apart.
-// Source: method.md, 3.
+// The most urgent level the section may be given: `watch` without a temperature, and by delivery while dp/mu has varied
+// by less than a factor 1.5, since displacement and leakage are then not told apart. Source: method.md, 3.
 Level most_urgent_allowed(const SectionSpec& spec, Basis basis, double laminar_span);
 
 // What is known of a section, as far as it decides whether it can have a level.
@@ -52,7 +50,7 @@ UnjudgedReason unjudged_reason(const Knowledge& knowledge);
 struct CauseEvidence {
     Level level = Level::unjudged;
     bool step = false;
-    bool explained = false;            // the step, by a change of oil, sensor, setting or range
+    bool explained = false;  // the step, by a change of oil, sensor, setting or range
     bool instrument_suspect = false;
     bool scales_with_leakage = false;  // excess grows with healthy leakage, as wear does and a meter's zero does not
 };
@@ -62,9 +60,8 @@ struct Cause {
     double weight = 0.0;
 };
 
-// The simplest cause that fits; `none` at sound or unjudged without a step. Weights are first guesses (0.7 of a plain sign, 0.5
-// where two cannot be told apart): the ranking of method.md, 7 is wider.
-// Source: method.md, 7.
+// The simplest cause that fits; `none` at sound or unjudged without a step. Weights are first guesses (0.7 of a plain
+// sign, 0.5 where two cannot be told apart): the ranking of method.md, 7 is wider. Source: method.md, 7.
 Cause simplest_cause(const CauseEvidence& evidence);
 
 }  // namespace slipledger::analytics

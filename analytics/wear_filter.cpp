@@ -11,26 +11,28 @@ namespace {
 
 using Square = stats::StateMatrix<wear_states>;
 
-constexpr double wear_walk = 0.004;            // per running day^0.5
-constexpr double drift_walk = 0.0006;          // per running day^1.5
+constexpr double wear_walk = 0.004;    // per running day^0.5
+constexpr double drift_walk = 0.0006;  // per running day^1.5
 constexpr double disturbance_sd = 0.03;
-constexpr double disturbance_days = 10.0;      // calendar days
-constexpr double model_error = 0.03;           // of predicted leakage: how well three terms describe a pump for an hour
-constexpr double contrast_error = 0.30;        // of a contrast: gaps bend and warm with pressure, hour after hour alike
-constexpr double least_swing = 0.03;           // of the reference features: smaller swings are mostly gauge noise
-constexpr double hourly_gain_share = 0.3;      // of a meter's gain error that comes and goes; the rest is one with dV
-constexpr double stop_repeatability = 0.3;     // of the meter's accuracy, from one stop to the next
-constexpr double outside_error = 0.3;          // of predicted leakage per unit of distance in ln dp, ln mu
+constexpr double disturbance_days = 10.0;   // calendar days
+constexpr double model_error = 0.03;        // of predicted leakage: how well three terms describe a pump for an hour
+constexpr double contrast_error = 0.30;     // of a contrast: gaps bend and warm with pressure, hour after hour alike
+constexpr double least_swing = 0.03;        // of the reference features: smaller swings are mostly gauge noise
+constexpr double hourly_gain_share = 0.3;   // of a meter's gain error that comes and goes; the rest is one with dV
+constexpr double stop_repeatability = 0.3;  // of the meter's accuracy, from one stop to the next
+constexpr double outside_error = 0.3;       // of predicted leakage per unit of distance in ln dp, ln mu
 constexpr double huber_limit = 2.5;
-constexpr double longest_step = 0.5;           // in any logarithm, by one sighting
-constexpr double loose = 0.10;                 // of predicted leakage: relinearise while less sure than this
+constexpr double longest_step = 0.5;  // in any logarithm, by one sighting
+constexpr double loose = 0.10;        // of predicted leakage: relinearise while less sure than this
 constexpr int relinearisations = 3;
-constexpr double speed_told_apart = 1.3;       // speed must vary by this factor before the speed term is learned
+constexpr double speed_told_apart = 1.3;  // speed must vary by this factor before the speed term is learned
 constexpr double jump_sd = 0.35;
-constexpr double most_leakage = 1.2;           // of theoretical flow
+constexpr double most_leakage = 1.2;  // of theoretical flow
 constexpr double least_leakage = -0.2;
 
-double square(double v) { return v * v; }
+double square(double v) {
+    return v * v;
+}
 
 // Rows of the packed lower triangle of Moments::covariance.
 Eigen::Matrix3d feature_covariance(const Moments& m) {
@@ -40,9 +42,13 @@ Eigen::Matrix3d feature_covariance(const Moments& m) {
     return packed;
 }
 
-Eigen::Vector3d leakage_covariance(const Moments& m) { return {m.covariance[1], m.covariance[3], m.covariance[6]}; }
+Eigen::Vector3d leakage_covariance(const Moments& m) {
+    return {m.covariance[1], m.covariance[3], m.covariance[6]};
+}
 
-Eigen::Vector3d features_of(const Moments& m) { return {m.feature[0], m.feature[1], m.feature[2]}; }
+Eigen::Vector3d features_of(const Moments& m) {
+    return {m.feature[0], m.feature[1], m.feature[2]};
+}
 
 const Moments* dominant(const Summary& summary) {
     const auto& [full, compensating] = summary.judged;
@@ -183,8 +189,9 @@ void WearFilter::feed_mean(const Moments& m, bool compensating, bool settled) {
 }
 
 // The covariance within a summary, turned to its own axes, where each axis is a sighting of its own of the slopes a w,
-// b w and c w + dV n: free of zero and constants, and of dV where speed does not vary. By delivery without a speed sensor a
-// swing says nothing: the motor slips more under load, and flow that is missing for that looks just like leakage.
+// b w and c w + dV n: free of zero and constants, and of dV where speed does not vary. By delivery without a speed
+// sensor a swing says nothing: the motor slips more under load, and flow that is missing for that looks just like
+// leakage.
 void WearFilter::feed_contrasts(const Moments& m, bool settled) {
     if (basis_ == Basis::delivery && !spec_.has_speed_sensor) return;
     const Eigen::Matrix3d swings = feature_covariance(m);
@@ -213,8 +220,8 @@ void WearFilter::feed_contrasts(const Moments& m, bool settled) {
     }
 }
 
-// Flow seen while stopped adds to the leakage seen by drain, and by delivery is taken from it. Below the meter's least flow
-// it only says that the zero is small.
+// Flow seen while stopped adds to the leakage seen by drain, and by delivery is taken from it. Below the meter's least
+// flow it only says that the zero is small.
 void WearFilter::feed_stop(const Summary& summary, bool settled) {
     if (summary.stop_count == 0 || !std::isfinite(summary.stop_flow_lpm) || spec_.case_flushing_lpm > 0.0) return;
     const FlowMeter& meter = basis_ == Basis::delivery ? spec_.delivery_meter : spec_.drain_meter;
@@ -224,8 +231,8 @@ void WearFilter::feed_stop(const Summary& summary, bool settled) {
     Sighting seen;
     seen.design(meter_zero) = 1.0;
     seen.innovation = (basis_ == Basis::delivery ? -1.0 : 1.0) * summary.stop_flow_lpm - belief_.mean(meter_zero);
-    seen.variance = square(stop_repeatability * told) + square(meter.resolution_lpm) +
-                    (too_little ? square(meter.least_lpm) : 0.0);
+    seen.variance =
+        square(stop_repeatability * told) + square(meter.resolution_lpm) + (too_little ? square(meter.least_lpm) : 0.0);
     if (seen.variance > 0.0) take(seen, settled);
 }
 
@@ -259,7 +266,9 @@ void WearFilter::remember(const Moments& m) {
     speed_.widen(std::log(m.speed_rpm), std::log(m.speed_rpm));
 }
 
-void WearFilter::open_wear() { belief_.covariance(ln_wear, ln_wear) += square(jump_sd); }
+void WearFilter::open_wear() {
+    belief_.covariance(ln_wear, ln_wear) += square(jump_sd);
+}
 
 LogEstimate WearFilter::wear() const {
     if (!primed_) return {};
@@ -311,8 +320,12 @@ LogEstimate WearFilter::leakage_at(const DutyPoint& at, bool worn) const {
             std::sqrt(design.dot(belief_.covariance * design))};
 }
 
-LogEstimate WearFilter::healthy_leakage(const DutyPoint& at) const { return leakage_at(at, false); }
-LogEstimate WearFilter::worn_leakage(const DutyPoint& at) const { return leakage_at(at, true); }
+LogEstimate WearFilter::healthy_leakage(const DutyPoint& at) const {
+    return leakage_at(at, false);
+}
+LogEstimate WearFilter::worn_leakage(const DutyPoint& at) const {
+    return leakage_at(at, true);
+}
 
 double WearFilter::distance_from_seen(const Moments& m) const {
     if (pressure_.low > pressure_.high) return 0.0;
@@ -325,6 +338,8 @@ double WearFilter::distance_from_seen(const DutyPoint& at) const {
                       viscosity_.distance(std::log(spec_.fluid.kinematic_cst(at.temperature_c))));
 }
 
-double WearFilter::laminar_span() const { return std::exp(laminar_.width()); }
+double WearFilter::laminar_span() const {
+    return std::exp(laminar_.width());
+}
 
 }  // namespace slipledger::analytics

@@ -4,9 +4,9 @@
 //   leakage seen = dV n / 1000 + zero + k + exp(x + u) (a f1 + b f2 + c f3) + noise
 //
 // with f1..f3 the feature means of the summary in units of the reference point, k only while compensating. An extended
-// Kalman filter in Joseph's form, the mean sighting relinearised while the coefficients are still loose. Use `Course`, which
-// ties it to steps, levels and days; this class knows neither days nor limits.
-// Source: method.md, 5; Anderson and Moore 1979; Durbin and Koopman 2012 (from memory).
+// Kalman filter in Joseph's form, the mean sighting relinearised while the coefficients are still loose. Use `Course`,
+// which ties it to steps, levels and days; this class knows neither days nor limits. Source: method.md, 5; Anderson and
+// Moore 1979; Durbin and Koopman 2012 (from memory).
 #pragma once
 
 #include <limits>
@@ -25,8 +25,8 @@ struct LogEstimate {
 
 // What the summary at hand says by itself, with the coefficients known at its end.
 struct OwnReading {
-    double leakage_lpm = unknown;   // wear-dependent part of what was seen
-    double healthy_lpm = unknown;   // what it would be at ratio 1, at the same operating points
+    double leakage_lpm = unknown;  // wear-dependent part of what was seen
+    double healthy_lpm = unknown;  // what it would be at ratio 1, at the same operating points
     double ratio = unknown;
     double ratio_sd = unknown;
 };
@@ -36,18 +36,21 @@ struct SeenSpan {
     double low = std::numeric_limits<double>::infinity();
     double high = -std::numeric_limits<double>::infinity();
 
+    // Not computed: remembers.
     void widen(double ln_low, double ln_high) {
         if (ln_low < low) low = ln_low;
         if (ln_high > high) high = ln_high;
     }
+    // Not computed: a difference. Returns a logarithm; 0 while empty. Source: definition.
     double width() const { return high > low ? high - low : 0.0; }
+    // Not computed: a difference. Returns a logarithm; 0 inside. Source: definition.
     double distance(double ln) const { return ln < low ? low - ln : ln > high ? ln - high : 0.0; }
 };
 
 // Threads: one at a time.
 class WearFilter {
 public:
-    // A new life: forgets all. Nothing is believed until the first summary is fed.
+    // A new life: forgets all. Nothing is believed until the first summary is fed. Not computed: bookkeeping.
     void begin(const SectionSpec& spec, Basis basis);
     // Facts of the same life changed: coefficients are carried to the new reference point, oil and name plate.
     void adopt(const SectionSpec& spec);
@@ -65,13 +68,13 @@ public:
     //
     //   d  running_days   24 running hours   c  calendar_days
     //
-    // with variance 0.004^2 d + 0.0006^2 d^3/3 on x, 0.0006^2 d on v, 0.0006^2 d^2/2 between them, 0.03^2 (1 - phi^2) on u.
-    // Example: v = 0.001, 10 running days -> x grows by 0.01.
-    // Source: method.md, 5 (integrated random walk: Durbin and Koopman 2012).
+    // with variance 0.004^2 d + 0.0006^2 d^3/3 on x, 0.0006^2 d on v, 0.0006^2 d^2/2 between them, 0.03^2 (1 - phi^2)
+    // on u. Example: v = 0.001, 10 running days -> x grows by 0.01. Source: method.md, 5 (integrated random walk:
+    // Durbin and Koopman 2012).
     void advance(double running_days, double calendar_days);
 
-    // How far a summary's mean leakage is from what is expected, in standard deviations, before it is fed; of the judged
-    // regime with most points. NaN before the first feed and where nothing was judged.
+    // How far a summary's mean leakage is from what is expected, in standard deviations, before it is fed; of the
+    // judged regime with most points. NaN before the first feed and where nothing was judged.
     //
     // Returns a pure number, about N(0, 1) while nothing jumps.
     // Source: Anderson and Moore 1979 (standardised innovation).
@@ -106,7 +109,8 @@ public:
     // Source: method.md, 3 and 5.
     LogEstimate worn_leakage(const DutyPoint& at) const;
 
-    // Healthy coefficients a, b, c at the reference point; NaN before the first feed. Not computed: exponentials of the state.
+    // Healthy coefficients a, b, c at the reference point; NaN before the first feed. Not computed: exponentials of the
+    // state.
     LeakageCoefficients coefficients() const;
 
     // Distance of a summary or a duty point from what was seen in ln dp and ln viscosity; 0 inside.
@@ -118,6 +122,7 @@ public:
     // Source: method.md, 3.
     double laminar_span() const;
 
+    // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
         io(self.belief_.mean, self.belief_.covariance, self.primed_, self.plate_cm3_, self.reference_.pressure_rise_bar,

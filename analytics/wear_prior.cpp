@@ -12,16 +12,18 @@ namespace {
 constexpr std::array<double, 3> share{1.0, 0.15, 0.06};
 constexpr std::array<double, 3> share_sd{0.6, 0.7, 0.7};
 constexpr double level_sd = 0.6;
-constexpr double maker_sd = 0.15;            // the maker's bench against the plant's meter, one pump against the next
-constexpr double least_slip = 0.005;         // of theoretical flow: no displacement pump leaks less or, healthy, more
+constexpr double maker_sd = 0.15;     // the maker's bench against the plant's meter, one pump against the next
+constexpr double least_slip = 0.005;  // of theoretical flow: no displacement pump leaks less or, healthy, more
 constexpr double most_slip = 0.15;
-constexpr double zero_of_flow = 0.002;       // a meter's zero where its accuracy is not told, of theoretical flow
-constexpr double pilot_of_flow = 0.01;       // of theoretical flow, give or take as much
-constexpr double drift_sd = 0.0008;          // per running day
+constexpr double zero_of_flow = 0.002;  // a meter's zero where its accuracy is not told, of theoretical flow
+constexpr double pilot_of_flow = 0.01;  // of theoretical flow, give or take as much
+constexpr double drift_sd = 0.0008;     // per running day
 constexpr double disturbance_sd = 0.03;
-constexpr double taken_over_sd = 0.35;       // ln of what a pump may have worn before it was watched
+constexpr double taken_over_sd = 0.35;  // ln of what a pump may have worn before it was watched
 
-double square(double v) { return v * v; }
+double square(double v) {
+    return v * v;
+}
 
 void spread_level(WearBelief& belief, double level) {
     for (int i = 0; i < 3; ++i) {
@@ -60,8 +62,7 @@ LeakageState leakage_state(const DutyPoint& at, const Fluid& fluid) {
 
 WearBelief prior_belief(const SectionSpec& spec, Basis basis, double first_leakage_lpm, const Features& features) {
     WearBelief belief;
-    const double flow =
-        theoretical_flow_lpm(spec.displacement_cm3, spec.reference.speed_rpm, spec.max_stroke_fraction);
+    const double flow = theoretical_flow_lpm(spec.displacement_cm3, spec.reference.speed_rpm, spec.max_stroke_fraction);
     const double weight = healthy_leakage_lpm({share[0], share[1], share[2]}, features);
     const double level = std::clamp(first_leakage_lpm, least_slip * flow, most_slip * flow) / weight;
     spread_level(belief, std::log(level));

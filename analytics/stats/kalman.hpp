@@ -1,9 +1,8 @@
-// One step of a Kalman filter, for any small fixed number of states: what the wear filter is built on, and what is checked
-// against other people's software on its own (tests/reference/kalman.py). The covariance is updated in Joseph's form,
-// which stays symmetric and positive for any gain: also for one that was bounded, or in which states are only considered.
-// Header only: it is a template.
-// Source: B. D. O. Anderson and J. B. Moore, Optimal Filtering (1979); J. Durbin and S. J. Koopman, Time Series Analysis
-// by State Space Methods (2012) (from memory).
+// One step of a Kalman filter, for any small fixed number of states: what the wear filter is built on, and what is
+// checked against other people's software on its own (tests/reference/kalman.py). The covariance is updated in Joseph's
+// form, which stays symmetric and positive for any gain: also for one that was bounded, or in which states are only
+// considered. Header only: it is a template. Source: B. D. O. Anderson and J. B. Moore, Optimal Filtering (1979); J.
+// Durbin and S. J. Koopman, Time Series Analysis by State Space Methods (2012) (from memory).
 #pragma once
 
 #include <Eigen/Core>
@@ -59,8 +58,8 @@ StateVector<N> best_gain(const Belief<N>& belief, const Sighting<N>& seen) {
     return spread / (seen.design.dot(spread) + seen.variance);
 }
 
-// Takes a sighting in with any gain: mean' = mean + K innovation, P' = (I - K h') P (I - K h')' + K R K'. An entry of K set
-// to zero leaves its state where it is and still counts what is not known of it (Schmidt's consider filter).
+// Takes a sighting in with any gain: mean' = mean + K innovation, P' = (I - K h') P (I - K h')' + K R K'. An entry of K
+// set to zero leaves its state where it is and still counts what is not known of it (Schmidt's consider filter).
 // Example: one state 0 +- 1, seen 1 with variance 1, K = 1/2 -> 0.5, variance 0.5.
 // Source: Anderson and Moore 1979 (Joseph's form).
 template <int N>

@@ -1,5 +1,5 @@
-// A linear fit by least squares, with what is not known of it. By an orthogonal decomposition, not by normal equations, so
-// that it stands up to badly conditioned data (NIST's Longley set is the test).
+// A linear fit by least squares, with what is not known of it. By an orthogonal decomposition, not by normal equations,
+// so that it stands up to badly conditioned data (NIST's Longley set is the test).
 #pragma once
 
 #include <optional>

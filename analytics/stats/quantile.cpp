@@ -18,6 +18,8 @@ double quantile(std::vector<double> sample, double share) {
     return *lower + (place - static_cast<double>(below)) * (next - *lower);
 }
 
-double median(std::vector<double> sample) { return quantile(std::move(sample), 0.5); }
+double median(std::vector<double> sample) {
+    return quantile(std::move(sample), 0.5);
+}
 
 }  // namespace slipledger::analytics::stats

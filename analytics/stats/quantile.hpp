@@ -14,7 +14,8 @@ namespace slipledger::analytics::stats {
 //
 // Returns the unit of the sample; NaN for an empty sample or a share outside 0..1.
 // Example: {1, 2, 4, 8} at 0.5 -> 3; at 0.9 -> 6.8.
-// Source: R. J. Hyndman and Y. Fan, Sample quantiles in statistical packages (1996), type 7 (from memory); NumPy's default.
+// Source: R. J. Hyndman and Y. Fan, Sample quantiles in statistical packages (1996), type 7 (from memory); NumPy's
+// default.
 double quantile(std::vector<double> sample, double share);
 
 // Quantile at one half.

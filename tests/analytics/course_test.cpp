@@ -1,0 +1,292 @@
+#include "analytics/course.hpp"
+
+#include <algorithm>
+#include <bit>
+#include <chrono>
+#include <cmath>
+#include <cstdio>
+#include <ctime>
+
+#include <gtest/gtest.h>
+
+#include "tests/analytics/simulated_section.hpp"
+
+namespace slipledger::analytics {
+namespace {
+
+using testing::run_course;
+using testing::simulate;
+using testing::simulated_day;
+using testing::SimulatedHour;
+using testing::SimulatedSection;
+using testing::simulation_start;
+
+Course course_of(const SimulatedSection& section) {
+    Course course(section.basis);
+    course.begin_life({.number = 1, .since = simulation_start}, section.spec());
+    return course;
+}
+
+int first_day(const std::vector<DayVerdict>& days, Level level) {
+    for (std::size_t day = 0; day < days.size(); ++day)
+        if (days[day].level >= level) return static_cast<int>(day);
+    return -1;
+}
+
+Level highest(const std::vector<DayVerdict>& days) {
+    Level level = Level::unjudged;
+    for (const DayVerdict& day : days) level = std::max(level, day.level);
+    return level;
+}
+
+// reference: Course::finish_day - outside: truth of the simulation, ratio 1 through a year whose oil swings by 16 K
+TEST(Course, OfAHealthySectionStaysSoundThroughTheSeasonsAndANewPressure) {
+    for (const Basis basis : {Basis::case_drain, Basis::delivery}) {
+        SimulatedSection section{.seed = 31, .basis = basis};
+        section.pressure_shift = 1.25;
+        Course course = course_of(section);
+        EXPECT_EQ(highest(run_course(course, simulate(section), 0, section.days)), Level::sound) << name_of(basis);
+        EXPECT_TRUE(course.drain_alarm_changes().empty());
+    }
+}
+
+// reference: Course::finish_day - outside: truth of the simulation, worn straight to 2.5 in 4992 running hours
+TEST(Course, OfASectionThatWearsRisesToPlanWithItsRatioWithinATenth) {
+    SimulatedSection section{.seed = 32};
+    section.ratio = [](double h) { return 1.0 + 1.5 * h / 5000.0; };
+    const auto hours = simulate(section);
+    Course course = course_of(section);
+    const auto days = run_course(course, hours, 0, section.days);
+    EXPECT_NEAR(days.back().leakage_ratio.value / hours.back().true_ratio, 1.0, 0.1);
+    EXPECT_EQ(days.back().level, Level::plan);
+    EXPECT_GT(days.back().clearance_growth_percent, 25.0);
+    // The true ratio passes 1.25 on day 60 and 2 on day 243.
+    EXPECT_NEAR(first_day(days, Level::watch), 60, 25);
+    EXPECT_NEAR(first_day(days, Level::plan), 243, 45);
+    EXPECT_NEAR(days.back().excess_lpm / days.back().leakage_lpm, 0.6, 0.05);
+    const auto changes = course.drain_alarm_changes();
+    ASSERT_FALSE(changes.empty());
+    EXPECT_EQ(changes.front().rule, Rule::leakage_ratio);
+    EXPECT_EQ(changes.front().edge, AlarmEdge::raised);
+    EXPECT_EQ(changes.front().at, days[static_cast<std::size_t>(first_day(days, Level::watch))].day.end);
+}
+
+// reference: Course::finish_day - outside: truth of the simulation, 2.5 (t / 5000)^2 reaches 3 at 5475 running hours
+TEST(Course, OfAcceleratingWearHoldsItsTrueRemainingLifeInItsRange) {
+    SimulatedSection section{.seed = 33};
+    section.ratio = [](double h) { return std::exp(std::log(2.5) * h * h / 25.0e6); };
+    Course course = course_of(section);
+    const auto days = run_course(course, simulate(section), 0, section.days);
+    const DayVerdict& day = days[330];
+    ASSERT_TRUE(day.trend.established);
+    const double left = 5475.0 - day.life_running_h;
+    EXPECT_LT(day.hours_in_hand.low, left);
+    EXPECT_GT(day.hours_in_hand.high, left);
+    EXPECT_EQ(day.hours_in_hand.limit, "leakage-ratio");
+    EXPECT_TRUE(std::isnan(days[60].hours_in_hand.mid));
+    EXPECT_GT(days[60].hours_in_hand.low, 0.0);
+}
+
+// reference: Course::take - outside: truth of the simulation, a step to 1.6 at running hour 2500
+TEST(Course, FindsAStepWithinHoursAndNamesIt) {
+    SimulatedSection section{.seed = 34, .days = 200};
+    section.ratio = [](double h) { return h < 2500.0 ? 1.0 : 1.6; };
+    Course course = course_of(section);
+    const auto days = run_course(course, simulate(section), 0, section.days);
+    const auto changes = course.drain_alarm_changes();
+    ASSERT_FALSE(changes.empty());
+    EXPECT_EQ(changes.front().rule, Rule::step_change);
+    // Hour 2500 is the fourth of day 182 (16 running hours a day, six days a week).
+    const Instant stepped = simulated_day(182).begin + std::chrono::hours(10);
+    EXPECT_GT(changes.front().at, stepped);
+    EXPECT_LE(changes.front().at, stepped + std::chrono::hours(6));
+    EXPECT_NEAR(days[182].step_ratio, 1.6, 0.16);
+    EXPECT_EQ(days[182].cause, CauseKind::sudden_damage);
+    EXPECT_TRUE(std::isnan(days[183].clearance_growth_percent));
+}
+
+// reference: Course::change_facts - hand-worked: the same step in the hour of a change is not called one
+TEST(Course, AttributesAStepToTheChangeOfTheSameHour) {
+    SimulatedSection section{.seed = 35, .days = 120};
+    section.ratio = [](double h) { return h < 1200.0 ? 1.0 : 1.5; };
+    Course course = course_of(section);
+    double running_h = 0.0;
+    for (const SimulatedHour& hour : simulate(section)) {
+        if (running_h == 1200.0) course.change_facts(hour.summary.start, section.spec());
+        course.take(hour.summary);
+        running_h += 1.0;
+    }
+    for (const AlarmChange& change : course.drain_alarm_changes()) EXPECT_NE(change.rule, Rule::step_change);
+    EXPECT_EQ(course.quote(simulated_day(119)).cause, CauseKind::oil_or_operation);
+}
+
+// reference: Course::begin_life - hand-worked: after a replacement the new life learns from 1 and old episodes are over
+TEST(Course, OfANewLifeBeginsAnew) {
+    SimulatedSection section{.seed = 36, .days = 300};
+    section.ratio = [](double h) { return h < 2400.0 ? 1.0 + h / 2000.0 : 1.0; };
+    const auto hours = simulate(section);
+    Course course = course_of(section);
+    run_course(course, hours, 0, 175);
+    EXPECT_EQ(course.quote(simulated_day(174)).level, Level::plan);
+    course.drain_alarm_changes();
+    course.begin_life({.number = 2, .since = simulated_day(175).begin}, section.spec());
+    const auto ended = course.drain_alarm_changes();
+    ASSERT_FALSE(ended.empty());
+    for (const AlarmChange& change : ended) {
+        EXPECT_EQ(change.edge, AlarmEdge::returned);
+        EXPECT_EQ(change.life, 1);
+        EXPECT_EQ(change.at, simulated_day(175).begin);
+    }
+    const auto days = run_course(course, hours, 175, section.days);
+    EXPECT_EQ(days.front().reason, UnjudgedReason::learning);
+    EXPECT_EQ(days.front().life, 2);
+    EXPECT_EQ(days.back().level, Level::sound);
+    EXPECT_NEAR(days.back().leakage_ratio.value, 1.0, 0.08);
+}
+
+void expect_same(const DayVerdict& a, const DayVerdict& b) {
+    EXPECT_EQ(a.level, b.level);
+    EXPECT_EQ(a.reason, b.reason);
+    const auto bits = [](const DayVerdict& day) {
+        return std::vector<std::uint64_t>{std::bit_cast<std::uint64_t>(day.leakage_ratio.value),
+                                          std::bit_cast<std::uint64_t>(day.leakage_ratio.low),
+                                          std::bit_cast<std::uint64_t>(day.efficiency.value),
+                                          std::bit_cast<std::uint64_t>(day.excess_lpm),
+                                          std::bit_cast<std::uint64_t>(day.trend.per_1000_h.value),
+                                          std::bit_cast<std::uint64_t>(day.hours_in_hand.low),
+                                          std::bit_cast<std::uint64_t>(day.life_running_h)};
+    };
+    EXPECT_EQ(bits(a), bits(b));
+}
+
+// reference: Course::checkpoint, Course::restore - hand-worked: taken up at any day, the rest is the same to the bit
+TEST(Course, PutDownAndTakenUpAtAnyDayGoesOnBitForBit) {
+    SimulatedSection section{.seed = 37, .days = 90};
+    section.ratio = [](double h) { return h < 600.0 ? 1.0 : 1.5 + h / 3000.0; };
+    const auto hours = simulate(section);
+    Course whole = course_of(section);
+    const auto expected = run_course(whole, hours, 0, section.days);
+    const auto end = whole.checkpoint();
+    for (const int day : {0, 1, 5, 43, 44, 45, 60, 89}) {
+        Course first = course_of(section);
+        run_course(first, hours, 0, day);
+        const auto bytes = first.checkpoint();
+        auto second = Course::restore(bytes, section.spec());
+        ASSERT_TRUE(second);
+        EXPECT_EQ(second->checkpoint(), bytes);
+        const auto days = run_course(*second, hours, day, section.days);
+        for (std::size_t i = 0; i < days.size() && !HasFailure(); ++i)
+            expect_same(days[i], expected[static_cast<std::size_t>(day) + i]);
+        EXPECT_EQ(second->checkpoint(), end) << "taken up on day " << day;
+    }
+}
+
+TEST(Course, IsNotTakenUpFromBytesOfAnotherVersion) {
+    const SimulatedSection section;
+    auto bytes = course_of(section).checkpoint();
+    bytes.pop_back();
+    EXPECT_FALSE(Course::restore(bytes, section.spec()));
+    bytes[0] ^= std::byte{0xff};
+    EXPECT_FALSE(Course::restore(bytes, section.spec()));
+    EXPECT_FALSE(Course::restore({}, section.spec()));
+}
+
+// reference: Course::quote - hand-worked: a day quoted many times changes nothing
+TEST(Course, QuotedInTheMiddleOfADayIsNotMoved) {
+    const SimulatedSection section{.seed = 38, .days = 20};
+    Course plain = course_of(section);
+    Course quoted_often = course_of(section);
+    for (const SimulatedHour& hour : simulate(section)) {
+        plain.take(hour.summary);
+        quoted_often.take(hour.summary);
+        quoted_often.quote(simulated_day(hour.day));
+    }
+    EXPECT_EQ(plain.checkpoint(), quoted_often.checkpoint());
+}
+
+TEST(Course, SaysWhyItHasNoLevelYet) {
+    const SimulatedSection section{.seed = 39, .days = 10};
+    const auto hours = simulate(section);
+    Course course = course_of(section);
+    EXPECT_EQ(course.finish_day(simulated_day(0)).reason, UnjudgedReason::no_data);
+    course.take(hours.front().summary);
+    const DayVerdict learning = course.finish_day(simulated_day(1));
+    EXPECT_EQ(learning.reason, UnjudgedReason::learning);
+    EXPECT_EQ(learning.level, Level::unjudged);
+    EXPECT_DOUBLE_EQ(learning.learning_h_left, 50.0);  // the run-in does not count
+    SectionSpec blind = section.spec();
+    blind.has_temperature_sensor = false;
+    Course without(Basis::case_drain);
+    without.begin_life({}, blind);
+    EXPECT_EQ(without.quote(simulated_day(0)).reason, UnjudgedReason::no_basis);
+}
+
+// reference: Course::finish_day - hand-worked: 3 judged of 48 running hours are under a tenth
+TEST(Course, OfASectionThatIsSeldomJudgedIsNeverSound) {
+    const SimulatedSection section{.seed = 40, .days = 80};
+    Course course = course_of(section);
+    auto hours = simulate(section);
+    int count = 0;
+    for (SimulatedHour& hour : hours) {
+        if (hour.day < 20 || count++ % 16 == 0) continue;
+        hour.summary.judged = {};
+        hour.summary.judged_h = 0.0;
+    }
+    const auto days = run_course(course, hours, 0, section.days);
+    EXPECT_EQ(days[19].level, Level::sound);
+    EXPECT_EQ(days.back().level, Level::unjudged);
+    EXPECT_EQ(days.back().reason, UnjudgedReason::seldom_judged);
+}
+
+// reference: Course::take, Course::drain_alarm_changes - hand-worked: raw rules go by each summary, with their delays
+TEST(Course, RaisesWhatASummaryShowsBySelf) {
+    const SimulatedSection section{.seed = 41, .days = 1};
+    SectionSpec spec = section.spec();
+    spec.limits.over_temperature_c = {.watch = 80.0, .on_delay = std::chrono::hours(1)};
+    Course course(Basis::case_drain);
+    course.begin_life({}, spec);
+    Summary hot = simulate(section).front().summary;
+    hot.highest_temperature_c = 85.0;
+    course.take(hot);
+    EXPECT_TRUE(course.drain_alarm_changes().empty());
+    hot.start += std::chrono::hours(1);
+    const SummaryVerdict verdict = course.take(hot);
+    const auto changes = course.drain_alarm_changes();
+    ASSERT_EQ(changes.size(), 1u);
+    EXPECT_EQ(changes[0].rule, Rule::over_temperature);
+    EXPECT_EQ(changes[0].at, hot.start + std::chrono::hours(1));
+    EXPECT_EQ(verdict.level, Level::unjudged);  // it raises an alarm, not the level
+}
+
+// reference: Course::take - hand-worked: what no pump can do is refused, told, and moves nothing
+TEST(Course, DistrustsTheInstrumentWhenReadingsContradict) {
+    const SimulatedSection section{.seed = 42, .days = 20};
+    Course course = course_of(section);
+    const auto hours = simulate(section);
+    run_course(course, hours, 0, section.days);
+    const double before = course.quote(simulated_day(20)).leakage_ratio.value;
+    Summary wrong = hours.back().summary;
+    wrong.start += std::chrono::hours(10);
+    wrong.judged[0].leakage_lpm = 300.0;
+    course.drain_alarm_changes();
+    EXPECT_TRUE(std::isnan(course.take(wrong).leakage_ratio.value));
+    EXPECT_EQ(course.quote(simulated_day(20)).leakage_ratio.value, before);
+    const auto changes = course.drain_alarm_changes();
+    ASSERT_EQ(changes.size(), 1u);
+    EXPECT_EQ(changes[0].rule, Rule::instrument_suspect);
+}
+
+TEST(Course, CostsLittlePerSummary) {
+    const SimulatedSection section{.seed = 43};
+    const auto hours = simulate(section);
+    Course course = course_of(section);
+    const auto began = std::clock();
+    run_course(course, hours, 0, section.days);
+    const double us =
+        1e6 * static_cast<double>(std::clock() - began) / CLOCKS_PER_SEC / static_cast<double>(hours.size());
+    std::printf("course: %.1f us of processor time per summary\n", us);
+    EXPECT_LT(us, 500.0);  // a debug build under a sanitizer; the release build is meant to be under 10
+}
+
+}  // namespace
+}  // namespace slipledger::analytics

@@ -1,0 +1,31 @@
+#include "analytics/excess_slope.hpp"
+
+#include <cmath>
+
+#include <gtest/gtest.h>
+
+namespace slipledger::analytics {
+namespace {
+
+ExcessSlope seen(double slope, double constant, double swing) {
+    ExcessSlope excess;
+    for (int i = 0; i < 120; ++i) {
+        const double healthy = 2.0 + swing * std::sin(0.7 * i);
+        excess.add({.leakage_lpm = slope * healthy + constant + 0.02 * std::cos(1.9 * i), .healthy_lpm = healthy});
+    }
+    return excess;
+}
+
+// reference: ExcessSlope::scales_with_leakage - hand-worked: slope 2 is above 1.1, slope 1 with a constant is not
+TEST(ExcessSlope, TellsWearFromAConstant) {
+    EXPECT_TRUE(seen(2.0, 0.0, 0.5).scales_with_leakage());
+    EXPECT_FALSE(seen(1.0, 1.0, 0.5).scales_with_leakage());
+}
+
+TEST(ExcessSlope, DoesNotSayWhereOperationNeverVaried) {
+    EXPECT_FALSE(seen(2.0, 0.0, 0.0).scales_with_leakage());
+    EXPECT_FALSE(ExcessSlope{}.scales_with_leakage());
+}
+
+}  // namespace
+}  // namespace slipledger::analytics
