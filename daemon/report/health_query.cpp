@@ -112,6 +112,31 @@ std::vector<std::string> notes_of(const config::Pump& pump, const config::Sectio
     return notes;
 }
 
+bool spare_in_stock(const config::Pump& pump, const config::Section& section) {
+    const std::optional<config::Spare>& spare = section.spare ? section.spare : pump.spare;
+    return spare && spare->in_stock > 0;
+}
+
+SentenceFacts sentence_facts(const Asked& asked, const config::Pump& pump, const config::Section& section,
+                             const SectionHealth& health, bool silent) {
+    SentenceFacts facts;
+    facts.type = pump.type;
+    facts.section = section.id;
+    facts.only_section = health.only_section;
+    facts.basis = health.basis.value_or(analytics::Basis::case_drain);
+    facts.compared_with = health.life.baseline;
+    facts.temperature_known = !health.data.set_aside.contains(std::string(name_of(analytics::Standing::no_temperature))) ||
+                              health.data.used > 0;
+    facts.least_judged_h = section.baseline.min_h;
+    facts.act_ratio = section.limits.leakage_ratio.act.value_or(analytics::unknown);
+    facts.act_points_lost = section.limits.efficiency_points.act.value_or(analytics::unknown);
+    facts.act_drain_share_percent = section.limits.drain_share_percent.act.value_or(analytics::unknown);
+    facts.spare_in_stock = spare_in_stock(pump, section);
+    if (silent) facts.silent_since = local_minute(*health.as_of, asked.plant.time_zone);
+    if (health.verdict) facts.verdict = *health.verdict;
+    return facts;
+}
+
 SectionHealth section_health(const Asked& asked, const config::Pump& pump, const config::Section& section) {
     SectionHealth health;
     health.pump = pump.id;
@@ -143,6 +168,7 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
         health.level = analytics::Level::unjudged;
         health.reason = std::string(name_of(analytics::UnjudgedReason::silent));
     }
+    health.sentence = sentence(sentence_facts(asked, pump, section, health, silent));
     health.alarms = query_alarms(asked.reader, asked.directory, pump.id, section.id);
     std::erase_if(health.alarms, [](const Episode& episode) { return episode.cleared.has_value(); });
     std::stable_sort(health.alarms.begin(), health.alarms.end(),

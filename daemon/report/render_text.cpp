@@ -30,7 +30,7 @@ std::string figure(std::string_view name, std::string_view value, std::string_vi
 
 std::string flow(double lpm, const config::Plant& plant) {
     if (!std::isfinite(lpm)) return "-";
-    if (plant.display_units == config::DisplayUnits::us) return fmt::format("{:.3f} gpm", analytics::gpm_from_lpm(lpm));
+    if (plant.display_units == config::DisplayUnits::us) return fmt::format("{:.3f} gpm", lpm / analytics::units::litres_per_us_gallon);
     return fmt::format("{:.2f} L/min", lpm);
 }
 

@@ -1,0 +1,90 @@
+// What the outer contract of `health --json` and the 80-column text promise, on a value made by hand.
+#include <gmock/gmock.h>
+#include <gtest/gtest.h>
+
+#include <nlohmann/json.hpp>
+#include <sstream>
+
+#include "daemon/report/number.hpp"
+#include "daemon/report/render_json.hpp"
+#include "daemon/report/render_page.hpp"
+#include "daemon/report/render_text.hpp"
+
+namespace slipledger::report {
+namespace {
+
+using analytics::Level;
+
+SectionHealth worn_section(const std::string& section) {
+    SectionHealth health;
+    health.pump = "press-2";
+    health.section = section;
+    health.pump_name = "press pump <2>";
+    health.model = "A71";
+    health.part = "rotating group";
+    health.only_section = false;
+    health.level = Level::plan;
+    health.sentence = "Section A leaks 2.1 times what it did when new, at the same pressure, speed and oil. Order a rotating group.";
+    health.basis = analytics::Basis::case_drain;
+    analytics::DayVerdict day;
+    day.leakage_ratio = {2.1, 1.9, 2.3};
+    day.efficiency = {0.912345678, 0.90, 0.92};
+    day.efficiency_baseline = 0.96;
+    day.hours_in_hand = {410.0, 520.0, 770.0, "leakage-ratio"};
+    health.verdict = day;
+    health.data.set_aside["stopped"] = 12;
+    return health;
+}
+
+// Every field that design section 8 names.
+TEST(HealthJson, HasEveryFieldOfTheContract) {
+    const auto json = to_json(worn_section("A"));
+    for (const char* key : {"pump", "section", "as_of", "level", "reason", "sentence", "leakage_ratio",
+                            "volumetric_efficiency", "clearance_growth_percent", "leakage_lpm", "excess_lpm", "leakage_kw",
+                            "yearly_cost", "trend", "hours_in_hand", "causes", "data", "life", "alarms", "cautions"})
+        EXPECT_TRUE(json.contains(key)) << key;
+    for (const char* key : {"value", "low", "high", "baseline", "basis", "at"})
+        EXPECT_TRUE(json["volumetric_efficiency"].contains(key)) << key;
+    for (const char* key : {"low", "mid", "high", "limit"}) EXPECT_TRUE(json["hours_in_hand"].contains(key)) << key;
+    for (const char* key : {"readings", "used", "disputed", "set_aside"}) EXPECT_TRUE(json["data"].contains(key)) << key;
+    for (const char* key : {"number", "started", "running_hours", "baseline"})
+        EXPECT_TRUE(json["life"].contains(key)) << key;
+}
+
+TEST(HealthJson, GivesNullForWhatIsNotKnownAndSixDigitsForTheRest) {
+    const auto json = to_json(worn_section("A"));
+    EXPECT_TRUE(json["yearly_cost"].is_null());
+    EXPECT_EQ(json["volumetric_efficiency"]["value"].dump(), "0.912346");
+    EXPECT_EQ(number(-0.0).dump(), "0.0");
+}
+
+TEST(HealthJson, PutsTheMostUrgentSectionFirstAndListsAllOfADoublePump) {
+    PumpHealth health{"press-2", {worn_section("A"), worn_section("B")}};
+    health.sections[0].level = Level::sound;
+    const auto json = to_json(health);
+    EXPECT_EQ(json["section"], "B");
+    EXPECT_EQ(json["sections"].size(), 2U);
+}
+
+TEST(HealthText, FitsEightyColumnsAndCarriesTheCautions) {
+    const std::string text = health_text(PumpHealth{"press-2", {worn_section("A")}}, config::Plant{}, Paper{});
+    std::istringstream lines(text);
+    for (std::string line; std::getline(lines, line);) EXPECT_LE(line.size(), page_width) << line;
+    for (const std::string& caution : cautions()) EXPECT_THAT(text, testing::HasSubstr(caution.substr(0, 30)));
+    EXPECT_THAT(text, testing::HasSubstr("**  plan"));
+}
+
+TEST(FleetText, FitsEightyColumns) {
+    std::istringstream lines(fleet_text({worn_section("A")}, config::Plant{}, Paper{}));
+    for (std::string line; std::getline(lines, line);) EXPECT_LE(line.size(), page_width) << line;
+}
+
+TEST(Page, ShowsForeignTextAsText) {
+    EXPECT_EQ(escaped("<b a='1' c=\"2\">&"), "&lt;b a=&#39;1&#39; c=&quot;2&quot;&gt;&amp;");
+    const std::string html = health_page(PumpHealth{"press-2", {worn_section("A")}}, config::Plant{});
+    EXPECT_THAT(html, testing::HasSubstr("press pump &lt;2&gt;"));
+    EXPECT_THAT(html, testing::Not(testing::HasSubstr("pump <2>")));
+}
+
+}  // namespace
+}  // namespace slipledger::report
