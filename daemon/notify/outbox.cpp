@@ -43,9 +43,9 @@ std::vector<ledger::DeliveryUpdate> deliver_all(std::span<const ledger::OutboxRo
 }
 
 Outbox::Outbox(std::string target, Channel& channel, RetryPlan plan, ledger::Writer& writer, std::string ledger_path,
-               const Clock& clock)
+               const Clock& clock, std::shared_ptr<Bell> bell)
     : target_(std::move(target)), channel_(channel), plan_(plan), writer_(writer), ledger_path_(std::move(ledger_path)),
-      clock_(clock) {
+      clock_(clock), bell_(std::move(bell)) {
     thread_ = std::thread([this] { work(); });
 }
 
@@ -54,23 +54,14 @@ Outbox::~Outbox() {
     thread_.join();
 }
 
-void Outbox::wake() {
-    const std::lock_guard lock(mutex_);
-    woken_ = true;
-    changed_.notify_all();
-}
-
 void Outbox::stop() {
-    {
-        const std::lock_guard lock(mutex_);
-        stop_ = true;
-        changed_.notify_all();
-    }
+    stop_ = true;
+    bell_->ring();
     channel_.abandon();
 }
 
 void Outbox::work() {
-    while (!stopping()) {
+    while (!stop_) {
         bool delivered_some = false;
         try {
             delivered_some = deliver_due();
@@ -96,14 +87,9 @@ bool Outbox::deliver_due() {
 }
 
 void Outbox::rest() {
-    std::unique_lock lock(mutex_);
-    changed_.wait_for(lock, look_every, [&] { return stop_ || woken_; });
-    woken_ = false;
-}
-
-bool Outbox::stopping() {
-    const std::lock_guard lock(mutex_);
-    return stop_;
+    std::unique_lock lock(bell_->mutex);
+    bell_->rung.wait_for(lock, look_every, [&] { return stop_ || bell_->rings != heard_; });
+    heard_ = bell_->rings;
 }
 
 }  // namespace slipledger::notify

@@ -3,15 +3,15 @@
 // same id.
 #pragma once
 
-#include <condition_variable>
+#include <atomic>
 #include <memory>
-#include <mutex>
 #include <optional>
 #include <span>
 #include <string>
 #include <thread>
 #include <vector>
 
+#include "daemon/bell.hpp"
 #include "daemon/clock.hpp"
 #include "daemon/ledger/reader.hpp"
 #include "daemon/ledger/writer.hpp"
@@ -28,22 +28,20 @@ std::vector<ledger::DeliveryUpdate> deliver_all(std::span<const ledger::OutboxRo
 // Threads: any thread may call; owns one thread that asks the ledger and delivers.
 class Outbox {
 public:
-    // `channel`, `writer` and `clock` must outlive it.
+    // `channel`, `writer` and `clock` must outlive it. Rung by `bell` when there is something new.
     Outbox(std::string target, Channel& channel, RetryPlan plan, ledger::Writer& writer, std::string ledger_path,
-           const Clock& clock);
+           const Clock& clock, std::shared_ptr<Bell> bell);
     ~Outbox();  // stops and waits for the thread
 
     Outbox(const Outbox&) = delete;
     Outbox& operator=(const Outbox&) = delete;
 
-    void wake();
     void stop();  // begins to stop: what is under way is abandoned, or delivered if it is quick
 
 private:
     void work();
     bool deliver_due();
     void rest();
-    bool stopping();
 
     std::string target_;
     Channel& channel_;
@@ -53,10 +51,9 @@ private:
     const Clock& clock_;
     std::optional<ledger::Reader> reader_;  // its own thread only
 
-    std::mutex mutex_;
-    std::condition_variable changed_;
-    bool woken_ = false;
-    bool stop_ = false;
+    std::shared_ptr<Bell> bell_;
+    std::uint64_t heard_ = 0;  // rings before the newest look
+    std::atomic<bool> stop_ = false;
     std::thread thread_;
 };
 

@@ -15,60 +15,57 @@ constexpr int most_passes_to_wait = 64;
 
 Analyst::Analyst(const config::Plant& plant, ledger::Writer& writer, std::string ledger_path, AnalystPace pace)
     : plant_(plant), writer_(writer), ledger_path_(std::move(ledger_path)), pace_(pace) {
-    writer_.on_marks([this] {
-        const std::lock_guard lock(mutex_);
-        ++raised_;
-        changed_.notify_all();
-    });
+    writer_.on_marks([bell = bell_] { bell->ring(); });
     thread_ = std::thread([this] { work(); });
 }
 
 Analyst::~Analyst() {
     writer_.on_marks({});
     {
-        const std::lock_guard lock(mutex_);
+        const std::lock_guard lock(bell_->mutex);
         stop_ = true;
-        changed_.notify_all();
     }
+    bell_->ring();
     thread_.join();
 }
 
 bool Analyst::wait_until_judged(std::chrono::milliseconds timeout) {
-    std::unique_lock lock(mutex_);
+    std::unique_lock lock(bell_->mutex);
     const std::uint64_t asked = ++asked_;
-    changed_.notify_all();
-    return changed_.wait_for(lock, timeout, [&] { return answered_ >= asked; });
+    bell_->rung.notify_all();
+    return bell_->rung.wait_for(lock, timeout, [&] { return answered_ >= asked; });
 }
 
 void Analyst::work() {
-    std::unique_lock lock(mutex_);
+    std::unique_lock lock(bell_->mutex);
     while (wait_for_work(lock)) {
         const std::uint64_t asked = asked_;
-        seen_ = raised_;
+        heard_ = bell_->rings;
+        look_again_ = false;
         lock.unlock();
         const bool nothing_left = pass();
         lock.lock();
         if (!nothing_left) continue;
         answered_ = asked;
-        changed_.notify_all();
+        bell_->rung.notify_all();
     }
 }
 
 // false: asked to stop.
 bool Analyst::wait_for_work(std::unique_lock<std::mutex>& lock) {
-    const auto has_work = [&] { return stop_ || raised_ != seen_ || asked_ != answered_; };
-    if (retry_) changed_.wait_for(lock, pace_.retry, has_work);
-    else changed_.wait(lock, has_work);
-    if (!stop_ && asked_ == answered_ && raised_ != seen_) wait_for_quiet(lock);
+    const auto has_work = [&] { return stop_ || look_again_ || bell_->rings != heard_ || asked_ != answered_; };
+    if (retry_) bell_->rung.wait_for(lock, pace_.retry, has_work);
+    else bell_->rung.wait(lock, has_work);
+    if (!stop_ && asked_ == answered_ && bell_->rings != heard_) wait_for_quiet(lock);
     return !stop_;
 }
 
 void Analyst::wait_for_quiet(std::unique_lock<std::mutex>& lock) {
     const auto hurry = [&] { return stop_ || asked_ != answered_; };
-    std::uint64_t raised = seen_;
-    for (std::chrono::milliseconds waited{0}; raised != raised_ && waited < pace_.longest; waited += pace_.quiet) {
-        raised = raised_;
-        if (changed_.wait_for(lock, pace_.quiet, hurry)) return;
+    std::uint64_t rings = heard_;
+    for (std::chrono::milliseconds waited{0}; rings != bell_->rings && waited < pace_.longest; waited += pace_.quiet) {
+        rings = bell_->rings;
+        if (bell_->rung.wait_for(lock, pace_.quiet, hurry)) return;
     }
 }
 
@@ -89,10 +86,10 @@ bool Analyst::pass() {
         if (failing.passes_to_wait > 0) --failing.passes_to_wait;
         else judge(mark);
     }
-    const std::lock_guard lock(mutex_);
+    const std::lock_guard lock(bell_->mutex);
     const bool any_failing = std::ranges::any_of(failing_, [](const auto& pump) { return pump.second.failures > 0; });
     retry_ = !reader_ || any_failing;
-    if (!marks.empty() && !any_failing) ++raised_;  // look again: what moved on meanwhile, or nothing
+    look_again_ = !marks.empty() && !any_failing;  // at what moved on meanwhile, or at nothing
     return nothing_left;
 }
 
@@ -115,7 +112,7 @@ void Analyst::fail(ledger::PumpId pump, const char* what) {
 }
 
 bool Analyst::stopping() {
-    const std::lock_guard lock(mutex_);
+    const std::lock_guard lock(bell_->mutex);
     return stop_;
 }
 

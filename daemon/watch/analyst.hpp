@@ -4,14 +4,15 @@
 #pragma once
 
 #include <chrono>
-#include <condition_variable>
 #include <map>
+#include <memory>
 #include <mutex>
 #include <optional>
 #include <string>
 #include <thread>
 
 #include "config/plant.hpp"
+#include "daemon/bell.hpp"
 #include "daemon/ledger/reader.hpp"
 #include "daemon/ledger/writer.hpp"
 
@@ -59,10 +60,9 @@ private:
     std::optional<ledger::Reader> reader_;  // analysis thread only, as the next
     std::map<ledger::PumpId, Failing> failing_;
 
-    std::mutex mutex_;
-    std::condition_variable changed_;
-    std::uint64_t raised_ = 1;    // times marks were raised; the first for those found at start
-    std::uint64_t seen_ = 0;      // of them, before the newest pass
+    std::shared_ptr<Bell> bell_ = std::make_shared<Bell>();  // its mutex guards all below
+    std::uint64_t heard_ = 0;     // rings before the newest pass
+    bool look_again_ = true;      // at start: marks may be left from before
     std::uint64_t asked_ = 0;     // looks asked for by wait_until_judged
     std::uint64_t answered_ = 0;  // the newest of them after which no mark was left
     bool retry_ = false;          // a pump waits to be tried again
