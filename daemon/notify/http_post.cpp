@@ -24,7 +24,7 @@ using net::ip::tcp;
 using namespace net::experimental::awaitable_operators;
 
 constexpr auto as_values = net::as_tuple(net::use_awaitable);
-constexpr std::uint64_t longest_answer = 64 * 1024;
+constexpr std::size_t longest_answer = 64 * 1024;
 constexpr std::size_t longest_quote = 200;  // of an answer, in an error
 
 // Where a request goes, taken from its URL.
@@ -65,17 +65,22 @@ http::request<http::string_body> request_of(const PostRequest& post, const Addre
     return request;
 }
 
+// The status decides; a body that is too long, or breaks off, does not change it. Read into a buffer of fixed size: Beast's
+// string body would make room for whatever length the receiver announces.
 net::awaitable<PostOutcome> read_answer(boost::beast::tcp_stream& stream) {
     boost::beast::flat_buffer buffer(longest_answer);
-    http::response_parser<http::string_body> parser;
-    parser.body_limit(longest_answer);
+    http::response_parser<http::buffer_body> parser;
+    parser.body_limit(boost::none);
     const auto [failure, count] = co_await http::async_read_header(stream, buffer, parser, as_values);
     if (failure) co_return no_answer("no answer", failure);
-    // The status decides; a body that is too long or breaks off does not change it.
+    std::string body(longest_answer, '\0');
+    parser.get().body().data = body.data();
+    parser.get().body().size = body.size();
     co_await http::async_read(stream, buffer, parser, as_values);
+    body.resize(body.size() - parser.get().body().size);
     PostOutcome outcome;
     outcome.status = parser.get().result_int();
-    outcome.text = parser.get().body().substr(0, longest_quote);
+    outcome.text = body.substr(0, longest_quote);
     co_return outcome;
 }
 
