@@ -54,7 +54,7 @@ void Analyst::work() {
 // false: asked to stop.
 bool Analyst::wait_for_work(std::unique_lock<std::mutex>& lock) {
     const auto has_work = [&] { return stop_ || look_again_ || bell_->rings != heard_ || asked_ != answered_; };
-    if (retry_) bell_->rung.wait_for(lock, pace_.retry, has_work);
+    if (retry_) bell_->rung.wait_for(lock, pace_.retry, [&] { return stop_; });  // what failed is not tried in a rush
     else bell_->rung.wait(lock, has_work);
     if (!stop_ && asked_ == answered_ && bell_->rings != heard_) wait_for_quiet(lock);
     return !stop_;
