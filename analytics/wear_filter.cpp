@@ -11,12 +11,11 @@ namespace {
 
 using Square = stats::StateMatrix<wear_states>;
 
-constexpr double wear_walk = 0.004;    // per running day^0.5
-constexpr double drift_walk = 0.0006;  // per running day^1.5
-constexpr double disturbance_sd = 0.03;
+constexpr double wear_walk = 0.004;         // per running day^0.5
+constexpr double drift_walk = 0.0006;       // per running day^1.5
 constexpr double disturbance_days = 10.0;   // calendar days
 constexpr double model_error = 0.03;        // of predicted leakage: how well three terms describe a pump for an hour
-constexpr double contrast_error = 0.30;     // of a contrast: gaps bend and warm with pressure, hour after hour alike
+constexpr double contrast_error = 0.20;     // of a contrast: gaps bend and warm with pressure, hour after hour alike
 constexpr double least_swing = 0.03;        // of the reference features: smaller swings are mostly gauge noise
 constexpr double hourly_gain_share = 0.3;   // of a meter's gain error that comes and goes; the rest is one with dV
 constexpr double stop_repeatability = 0.3;  // of the meter's accuracy, from one stop to the next
@@ -112,7 +111,7 @@ void WearFilter::advance(double running_days, double calendar_days) {
     noise(ln_wear, ln_wear) = square(wear_walk) * d + square(drift_walk) * d * d * d / 3.0;
     noise(ln_wear, drift) = noise(drift, ln_wear) = square(drift_walk) * d * d / 2.0;
     noise(drift, drift) = square(drift_walk) * d;
-    noise(disturbance, disturbance) = square(disturbance_sd) * (1.0 - phi * phi);
+    noise(disturbance, disturbance) = square(disturbance_spread(basis_)) * (1.0 - phi * phi);
     stats::carry(belief_, motion, noise);
 }
 

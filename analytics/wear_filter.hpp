@@ -68,7 +68,7 @@ public:
     //
     //   d  running_days   24 running hours   c  calendar_days
     //
-    // with variance 0.004^2 d + 0.0006^2 d^3/3 on x, 0.0006^2 d on v, 0.0006^2 d^2/2 between them, 0.03^2 (1 - phi^2)
+    // with variance 0.004^2 d + 0.0006^2 d^3/3 on x, 0.0006^2 d on v, 0.0006^2 d^2/2 between them, s^2 (1 - phi^2)
     // on u. Example: v = 0.001, 10 running days -> x grows by 0.01. Source: method.md, 5 (integrated random walk:
     // Durbin and Koopman 2012).
     void advance(double running_days, double calendar_days);

@@ -18,7 +18,6 @@ constexpr double most_slip = 0.15;
 constexpr double zero_of_flow = 0.002;  // a meter's zero where its accuracy is not told, of theoretical flow
 constexpr double pilot_of_flow = 0.01;  // of theoretical flow, give or take as much
 constexpr double drift_sd = 0.0008;     // per running day
-constexpr double disturbance_sd = 0.03;
 constexpr double taken_over_sd = 0.35;  // ln of what a pump may have worn before it was watched
 
 double square(double v) {
@@ -60,6 +59,10 @@ LeakageState leakage_state(const DutyPoint& at, const Fluid& fluid) {
             .speed_rpm = at.speed_rpm};
 }
 
+double disturbance_spread(Basis basis) {
+    return basis == Basis::case_drain ? 0.03 : 0.05;
+}
+
 WearBelief prior_belief(const SectionSpec& spec, Basis basis, double first_leakage_lpm, const Features& features) {
     WearBelief belief;
     const double flow = theoretical_flow_lpm(spec.displacement_cm3, spec.reference.speed_rpm, spec.max_stroke_fraction);
@@ -78,7 +81,7 @@ WearBelief prior_belief(const SectionSpec& spec, Basis basis, double first_leaka
     belief.covariance(meter_zero, meter_zero) = square(zero_sd);
     belief.covariance(pilot, pilot) = square(pilot_of_flow * flow);
     belief.covariance(drift, drift) = square(drift_sd);
-    belief.covariance(disturbance, disturbance) = square(disturbance_sd);
+    belief.covariance(disturbance, disturbance) = square(disturbance_spread(basis));
     return belief;
 }
 

@@ -28,6 +28,14 @@ using WearVector = stats::StateVector<wear_states>;
 // Not computed: a look-up in the fluid.
 LeakageState leakage_state(const DutyPoint& at, const Fluid& fluid);
 
+// How far the slow plant disturbance u wanders, in ln leakage: production, ageing oil, the thermometer. By delivery
+// also the slow part of the meter's gain error, a fraction of a per cent of flow that is as much as several per cent of
+// slip.
+//
+// Returns a pure number, one standard deviation: 0.03 by drain, 0.05 by delivery.
+// Source: method.md, 5; the figure by delivery from simulated sections (false alerts with a disturbance of 4 %).
+double disturbance_spread(Basis basis);
+
 // The belief at the start of a life, around a first look at its leakage.
 //
 //   leakage   first_leakage_lpm   L/min   seen at `features`; held between 0.5 and 15 % of theoretical flow

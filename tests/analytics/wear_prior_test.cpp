@@ -31,6 +31,14 @@ TEST(WearPrior, SharesTheFirstLookAmongTheThreeTerms) {
     EXPECT_NEAR(std::sqrt(belief.covariance(meter_zero, meter_zero)), 0.02, 1e-12);
 }
 
+// reference: disturbance_spread - hand-worked: the two figures of its header, and their squares in the belief
+TEST(WearPrior, LetsTheDisturbanceWanderFurtherByDelivery) {
+    EXPECT_DOUBLE_EQ(disturbance_spread(Basis::case_drain), 0.03);
+    EXPECT_DOUBLE_EQ(disturbance_spread(Basis::delivery), 0.05);
+    const WearBelief belief = prior_belief(spec, Basis::delivery, 2.42, at_reference);
+    EXPECT_DOUBLE_EQ(belief.covariance(disturbance, disturbance), 0.05 * 0.05);
+}
+
 // reference: prior_belief - hand-worked: 0.5 % and 15 % of 105.08 L/min; dV +-71 sqrt(0.012^2 + 0.005^2) = 0.923 cm3
 TEST(WearPrior, HoldsAnAbsurdFirstLookWithinWhatPumpsLeak) {
     EXPECT_NEAR(level_of(prior_belief(spec, Basis::delivery, -3.0, at_reference)), 0.5254, 1e-9);

@@ -69,9 +69,9 @@ TEST(KalmanStep, WeighsOneStateAndOneSightingEquallyWhenTheyAreEquallySure) {
     EXPECT_DOUBLE_EQ(belief.covariance(0, 0), 0.5);
 }
 
-// Schmidt's consider filter: the state that is held keeps its variance, and what is not known of it stays in the
-// other's. reference: take_in - hand-worked: seen = p + q, P = I, R = 1, K = (1/3, 0): var p = 4/9 + 1/9 + 1/9, cov =
-// -1/3
+// Schmidt's consider filter: the state that is held keeps its variance, and its doubt stays in the other's.
+//
+// reference: take_in - hand-worked: seen = p + q, P = I, R = 1, K = (1/3, 0): var p = 4/9 + 1/9 + 1/9, cov = -1/3
 TEST(KalmanStep, LeavesAHeldStateAloneAndCountsItsDoubt) {
     Belief<2> belief;
     belief.covariance.setIdentity();
