@@ -9,6 +9,11 @@ namespace {
 
 constexpr std::size_t bulk_rows = 512;  // so many rows of hours that close at once are worth going straight to blocks
 constexpr std::size_t points_a_move = 64;  // at a reading a second, 64 hours of cells are about 10 MB
+constexpr std::size_t crowded_rows = 60'000;  // in `recent`: from here on it is moved every few minutes of data time
+constexpr std::int64_t crowded_slice_ms = 600'000;
+// Ghosts deleted with each row stored: gone in a quarter of the time they took to come, so that an hour's end does not
+// burst upon the disk (SQLite writes the pages it empties).
+constexpr std::size_t ghosts_a_row = 4;
 constexpr std::int64_t laggard_ms = 3 * hour_ms;  // a point so far behind the plant does not hold up deletion
 
 std::int64_t time_of(const Row& row) { return ms_of(row.time); }
@@ -41,7 +46,9 @@ void ReadingStore::load() {
             point.pumps = pumps->second;
         points_.emplace(id, std::move(point));
     }
+    recent_rows_ = 0;
     for (const auto& extent : recent_.extents()) {
+        recent_rows_ += extent.rows;
         points_.at(extent.point).recent_from = extent.first;
         points_.at(extent.point).recent_to = extent.last;
     }
@@ -67,10 +74,12 @@ std::vector<ReadingStore::PointRowsNow> ReadingStore::sort_by_point(std::span<co
     return touched;
 }
 
+std::int64_t ReadingStore::slice() const { return recent_rows_ > crowded_rows ? crowded_slice_ms : hour_ms; }
+
 std::int64_t ReadingStore::boundary_now(const Point& point) const {
     const bool own = point.own && !point.pumps.empty();
     const auto newest = own ? marks_.state(point.pumps.front()).newest : marks_.newest_of_plant();
-    return newest ? floor_to(*newest - lateness_ms_, hour_ms) : always;
+    return newest ? floor_to(*newest - lateness_ms_, slice()) : always;
 }
 
 // As they will stand when these rows are stored: whether a row is new or repeated, its time counts.
@@ -89,7 +98,7 @@ void ReadingStore::set_boundaries(std::span<const Row* const> rows, std::span<co
         const bool own = at.point->own && !at.point->pumps.empty();
         const std::int64_t reached = own ? newest.at(at.point->pumps.front()) : plant;
         if (reached != always)
-            at.point->boundary = std::max(at.point->boundary, floor_to(reached - lateness_ms_, hour_ms));
+            at.point->boundary = std::max(at.point->boundary, floor_to(reached - lateness_ms_, slice()));
     }
 }
 
@@ -118,6 +127,7 @@ std::vector<Change> ReadingStore::store(std::span<const Row* const> rows) {
         store_point(rows, at, changes);
         at.point->rows.clear();
     }
+    delete_ghosts(ghosts_a_row * rows.size());
     return changes;
 }
 
@@ -137,6 +147,7 @@ void ReadingStore::store_point(std::span<const Row* const> rows, const PointRows
     const AddDisputed add = disputes_.adder(at.id);
     for (; i < told.size(); ++i) {
         made[i] = recent_.enter(*told[i], add);
+        if (made[i] == Change::added) ++recent_rows_;
         point.recent_from = std::min(point.recent_from, time_of(*told[i]));
         point.recent_to = std::max(point.recent_to, time_of(*told[i]));
     }
@@ -165,6 +176,17 @@ void ReadingStore::set_watermark(PointId id, std::int64_t moved_until) {
     run(watermark_);
 }
 
+// Where the watermark stood within this hour, its block has begun already.
+void ReadingStore::save_moved(PointId id, HourCells& cells) {
+    if (cells.empty()) return;
+    recent_rows_ -= std::min(recent_rows_, cells.offsets().size());
+    if (points_.at(id).moved_until <= cells.hour()) return blocks_.save(id, {}, cells);
+    moved_.clear(cells.hour());
+    const BlockAt block = blocks_.load(id, moved_);
+    moved_.merge(cells, disputes_.adder(id));
+    blocks_.save(id, block, moved_);
+}
+
 // Brings the points' watermarks up to their boundaries.
 void ReadingStore::move(std::span<const PointId> ids) {
     std::int64_t from = never;
@@ -172,29 +194,27 @@ void ReadingStore::move(std::span<const PointId> ids) {
     std::map<PointId, HourCells> open;
     for (const PointId id : ids) {
         const Point& point = points_.at(id);
-        if (point.recent_from >= point.boundary) continue;
+        if (point.recent_from >= point.boundary || point.moved_until >= point.boundary) continue;
         from = std::min(from, std::max(point.recent_from, point.moved_until));
         to = std::max(to, point.boundary);
         open.emplace(id, HourCells(always));
     }
-    const auto close = [&](PointId id, HourCells& cells) {
-        if (!cells.empty()) blocks_.save(id, {}, cells);
-    };
     const auto wanted = [&](PointId id) { return open.contains(id); };
-    recent_.scan(from, to, wanted, [&](const RecentRow& row) {
+    if (!open.empty()) recent_.scan(from, to, wanted, [&](const RecentRow& row) {
         const Point& point = points_.at(row.point);
         if (row.time < point.moved_until || row.time >= point.boundary) return;
         HourCells& cells = open.at(row.point);
         const std::int64_t hour = floor_to(row.time, hour_ms);
         if (cells.hour() != hour) {
-            close(row.point, cells);
+            save_moved(row.point, cells);
             cells.clear(hour);
         }
         cells.append(static_cast<std::int32_t>(row.time - hour), row.cells);
     });
-    for (auto& [id, cells] : open) close(id, cells);
+    for (auto& [id, cells] : open) save_moved(id, cells);
     for (const PointId id : ids) {
         Point& point = points_.at(id);
+        if (point.moved_until >= point.boundary) continue;
         if (point.recent_from < point.boundary) {
             ghosts_from_ = std::min(ghosts_from_, point.recent_from);
             point.recent_from = point.recent_to >= point.boundary ? point.boundary : never;
@@ -213,7 +233,6 @@ std::int64_t ReadingStore::ghosts_end() const {
 }
 
 bool ReadingStore::wants_move() const {
-    if (ghosts_from_ < ghosts_end()) return true;
     return std::ranges::any_of(points_, [this](const auto& entry) {
         return entry.second.recent_from < boundary_now(entry.second);
     });
@@ -225,10 +244,13 @@ void ReadingStore::move_step() {
         point.boundary = boundary_now(point);
         if (point.recent_from < point.boundary && closing.size() < points_a_move) closing.push_back(id);
     }
-    if (!closing.empty()) return move(closing);
+    move(closing);
+}
+
+void ReadingStore::delete_ghosts(std::size_t most) {
     const std::int64_t end = ghosts_end();
     if (ghosts_from_ >= end) return;
-    const std::int64_t reached = recent_.delete_ghosts(ghosts_from_, end);
+    const std::int64_t reached = recent_.delete_ghosts(ghosts_from_, end, most);
     ghosts_from_ = reached >= end ? never : reached;
 }
 

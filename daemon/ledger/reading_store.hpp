@@ -1,6 +1,7 @@
 // Where a reading goes: into `recent` while its hour fills, into its hour's block once that has been moved, or, where a bulk
 // load brings an hour that closes within the same commit, straight into a block. Each point has a watermark: below it all
-// is in blocks, above it all is in `recent`. None of this can be seen from outside; rows() gives both together.
+// is in blocks, above it all is in `recent`. Where `recent` is crowded (a reading a second) the watermark moves in smaller
+// steps than an hour, so that no step takes long. None of this can be seen from outside; rows() gives both together.
 #pragma once
 
 #include <SQLiteCpp/SQLiteCpp.h>
@@ -33,7 +34,7 @@ public:
 
     // Whether move_step() has something to do; cheap.
     bool wants_move() const;
-    // Moves some points' closed hours into blocks, or deletes a stretch of ghosts.
+    // Moves some points' closed hours into blocks.
     void move_step();
 
 private:
@@ -59,13 +60,16 @@ private:
     std::vector<PointRowsNow> sort_by_point(std::span<const Row* const> rows);
     void set_boundaries(std::span<const Row* const> rows, std::span<const PointRowsNow> points);
     std::int64_t boundary_now(const Point& point) const;
+    std::int64_t slice() const;
     bool goes_straight(std::span<const Row* const> rows, std::span<const PointRowsNow> points) const;
     void move(std::span<const PointId> points);
+    void save_moved(PointId id, HourCells& cells);
     void set_watermark(PointId id, std::int64_t moved_until);
     void store_point(std::span<const Row* const> rows, const PointRowsNow& at, std::span<Change> changes);
     void store_hour(PointId id, std::int64_t hour, std::span<const Row* const> rows, std::span<Change> changes);
     void touch(const Point& point, std::span<const Row* const> rows, std::span<const Change> changes);
     std::int64_t ghosts_end() const;
+    void delete_ghosts(std::size_t most);
 
     SQLite::Database& database_;
     const Directory& directory_;
@@ -77,7 +81,9 @@ private:
     DisputeTable disputes_;
     SQLite::Statement watermark_;
     HourCells cells_{0};
+    HourCells moved_{0};
     std::int64_t ghosts_from_ = never;
+    std::size_t recent_rows_ = 0;  // about: rows in `recent` that are no ghosts
 };
 
 }  // namespace slipledger::ledger

@@ -13,8 +13,6 @@ namespace {
 using analytics::quantity_count;
 using Feeds = std::array<std::uint16_t, quantity_count>;
 
-constexpr int ghosts_at_once = 20'000;
-
 std::string quantity_names(const char* after_each) {
     std::string names;
     for (const auto& facts : analytics::quantity_table) names.append(facts.name).append(after_each).append(", ");
@@ -80,8 +78,7 @@ RecentTable::RecentTable(SQLite::Database& database)
       find_(database, "SELECT " + recent_columns() + " FROM recent WHERE time = ? AND point = ?"),
       update_(database, update_sql()),
       scan_(database, "SELECT " + recent_columns() + " FROM recent WHERE time >= ? AND time < ? ORDER BY time"),
-      chunk_end_(database, "SELECT time FROM recent WHERE time >= ? AND time < ? ORDER BY time LIMIT 1 OFFSET " +
-                               std::to_string(ghosts_at_once)),
+      chunk_end_(database, "SELECT time FROM recent WHERE time >= ? AND time < ? ORDER BY time LIMIT 1 OFFSET ?"),
       delete_(database,
               "DELETE FROM recent WHERE time >= ? AND time < ? "
               "AND time < (SELECT moved_until FROM point WHERE point.id = recent.point)") {}
@@ -148,10 +145,10 @@ void RecentTable::scan(std::int64_t from, std::int64_t to, const std::function<b
     }
 }
 
-std::int64_t RecentTable::delete_ghosts(std::int64_t from, std::int64_t to) {
+std::int64_t RecentTable::delete_ghosts(std::int64_t from, std::int64_t to, std::size_t most) {
     std::int64_t end = to;
     {
-        Binder(chunk_end_) << from << to;
+        Binder(chunk_end_) << from << to << most;
         const Resetting reset(chunk_end_);
         if (chunk_end_.executeStep()) end = std::max(chunk_end_.getColumn(0).getInt64(), from + 1);
     }
@@ -162,12 +159,12 @@ std::int64_t RecentTable::delete_ghosts(std::int64_t from, std::int64_t to) {
 
 std::vector<RecentTable::Extent> RecentTable::extents() {
     SQLite::Statement rows(database_,
-                           "SELECT r.point, min(r.time), max(r.time) FROM recent r JOIN point p ON p.id = r.point "
+                           "SELECT r.point, min(r.time), max(r.time), count(*) FROM recent r JOIN point p ON p.id = r.point "
                            "WHERE p.moved_until IS NULL OR r.time >= p.moved_until GROUP BY r.point");
     std::vector<Extent> extents;
     while (rows.executeStep()) {
         Extent extent;
-        ColumnReader(rows) >> extent.point >> extent.first >> extent.last;
+        ColumnReader(rows) >> extent.point >> extent.first >> extent.last >> extent.rows;
         extents.push_back(extent);
     }
     return extents;

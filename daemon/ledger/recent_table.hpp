@@ -36,13 +36,14 @@ public:
     void scan(std::int64_t from, std::int64_t to, const std::function<bool(PointId)>& wanted,
               const std::function<void(const RecentRow&)>& each);
 
-    // Deletes ghosts of [from, to), some ten thousand at most; returns up to where.
-    std::int64_t delete_ghosts(std::int64_t from, std::int64_t to);
+    // Deletes ghosts of [from, to), looking at about `most` rows; returns up to where.
+    std::int64_t delete_ghosts(std::int64_t from, std::int64_t to, std::size_t most);
 
     struct Extent {
         PointId point{};
         std::int64_t first = 0;
         std::int64_t last = 0;
+        std::size_t rows = 0;
     };
     std::vector<Extent> extents();  // of rows that are no ghosts; reads the whole table
 

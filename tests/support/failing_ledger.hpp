@@ -12,6 +12,15 @@ enum class FailsWhen { before_storing, after_storing };
 
 // Threads: one at a time, like the ledger it wraps.
 class FailingLedger final : public ledger::Ledger {
+    template <typename Call>
+    auto counted(Call&& call) {
+        const bool fails = ++calls_ == at_;
+        if (fails && when_ == FailsWhen::before_storing) throw ledger::LedgerFailure("the disk is full (test)");
+        auto result = call();
+        if (fails) throw ledger::LedgerFailure("killed after the commit (test)");
+        return result;
+    }
+
 public:
     // `at` counts from 1; later calls go through again.
     FailingLedger(std::unique_ptr<ledger::Ledger> real, int at, FailsWhen when)
@@ -43,15 +52,6 @@ public:
     }
 
 private:
-    template <typename Call>
-    auto counted(Call&& call) {
-        const bool fails = ++calls_ == at_;
-        if (fails && when_ == FailsWhen::before_storing) throw ledger::LedgerFailure("the disk is full (test)");
-        auto result = call();
-        if (fails) throw ledger::LedgerFailure("killed after the commit (test)");
-        return result;
-    }
-
     std::unique_ptr<ledger::Ledger> real_;
     int at_;
     FailsWhen when_;

@@ -1,0 +1,119 @@
+// Opening: one writer, no later schema, no migration changed, and a copy made beside the running ledger.
+
+#include <gmock/gmock.h>
+#include <openssl/sha.h>
+
+#include "daemon/ledger/database.hpp"
+#include "daemon/ledger/registry.hpp"
+#include "tests/daemon/ledger/ledger_fixture.hpp"
+
+namespace slipledger::ledger {
+namespace {
+
+using ::testing::HasSubstr;
+using ::testing::SizeIs;
+
+std::string sha256(std::string_view text) {
+    std::array<unsigned char, SHA256_DIGEST_LENGTH> digest{};
+    SHA256(reinterpret_cast<const unsigned char*>(text.data()), text.size(), digest.data());
+    std::string hex;
+    for (const unsigned byte : digest) {
+        hex += "0123456789abcdef"[byte >> 4U];
+        hex += "0123456789abcdef"[byte & 15U];
+    }
+    return hex;
+}
+
+template <typename Call>
+std::string failure_of(Call&& call) {
+    try {
+        call();
+    } catch (const LedgerFailure& failure) {
+        return failure.what();
+    }
+    return "no failure";
+}
+
+class OpenLedger : public LedgerTest {};
+
+// A ledger in the field has run these texts; whoever wants another schema writes the next number. Filled in at release.
+TEST_F(OpenLedger, KnowsEachReleasedMigrationByItsHash) {
+    const std::vector<std::pair<std::string, std::string>> released{
+        {"0001_begin.sql", "1cd138fbc96fc3560cf6c15fde715085d7cd9169e3b80d60e0ea95ba74c2cd28"},
+    };
+    const auto migrations = schema::ledger_migrations();
+    ASSERT_THAT(migrations, SizeIs(released.size()));
+    for (std::size_t i = 0; i < released.size(); ++i) {
+        EXPECT_EQ(migrations[i].number, static_cast<int>(i) + 1);
+        EXPECT_EQ(migrations[i].name, released[i].first);
+        EXPECT_EQ(sha256(migrations[i].sql), released[i].second) << released[i].first << " was changed";
+    }
+}
+
+TEST_F(OpenLedger, RefusesASecondWriterAndNamesTheFirst) {
+    ledger();
+    const std::string failure = failure_of([&] { open_ledger(plant_); });
+    EXPECT_THAT(failure, HasSubstr(std::to_string(getpid())));
+    EXPECT_THAT(failure, HasSubstr("ask that daemon"));
+    close();
+    EXPECT_NO_THROW(open_ledger(plant_));
+}
+
+TEST_F(OpenLedger, RefusesAFileOfALaterVersionToWriterAndReader) {
+    ledger();
+    close();
+    SQLite::Database(plant_.store.path, SQLite::OPEN_READWRITE).exec("PRAGMA user_version = 99");
+    EXPECT_THAT(failure_of([&] { open_ledger(plant_); }), HasSubstr("schema 99"));
+    EXPECT_THAT(failure_of([&] { Reader(plant_.store.path); }), HasSubstr("later version"));
+}
+
+TEST_F(OpenLedger, SaysThatThereIsNone) {
+    EXPECT_THAT(failure_of([&] { Reader(folder_ / "nothing.db"); }), HasSubstr("no ledger"));
+    plant_.store.path = folder_ / "no/such/folder/ledger.db";
+    EXPECT_THAT(failure_of([&] { open_ledger(plant_); }), HasSubstr("no/such/folder"));
+}
+
+TEST_F(OpenLedger, LeavesAMigrationThatFailsUndone) {
+    SQLite::Database database(folder_ / "half.db", SQLite::OPEN_READWRITE | SQLite::OPEN_CREATE);
+    const std::array<schema::Migration, 2> migrations{{{1, "0001_a.sql", "CREATE TABLE a (x); CREATE TABLE b (x);"},
+                                                       {2, "0002_b.sql", "CREATE TABLE c (x); CREATE TABLE a (x);"}}};
+    EXPECT_THROW(migrate(database, migrations), SQLite::Exception);
+    EXPECT_EQ(schema_number(database), 1);
+    EXPECT_TRUE(database.tableExists("b"));
+    EXPECT_FALSE(database.tableExists("c"));
+}
+
+TEST_F(OpenLedger, KeepsEveryNumberWhenThePlantFileChanges) {
+    const PointId lathe = point("lathe");
+    const FeedId lab = ledger().directory().feeds.at("lab");
+    const auto track = ledger().directory().track("double", "P2", analytics::Basis::delivery).id;
+    close();
+    plant_.pumps.erase(plant_.pumps.begin(), plant_.pumps.begin() + 2);
+    plant_.feeds.erase(plant_.feeds.begin());
+    add_pump("new-one", {"A"});
+    EXPECT_EQ(point("lathe"), lathe);
+    EXPECT_EQ(ledger().directory().feeds.at("lab"), lab);
+    EXPECT_EQ(ledger().directory().track("double", "P2", analytics::Basis::delivery).id, track);
+    const Directory read = reader().directory();
+    EXPECT_EQ(read.points, ledger().directory().points);
+    EXPECT_EQ(read.pumps_of_point, ledger().directory().pumps_of_point);
+    EXPECT_EQ(read.tracks.size(), ledger().directory().tracks.size());
+    EXPECT_THAT(read.pumps_of_point.at(read.reservoirs.at("tank-1")), SizeIs(3));
+}
+
+TEST_F(OpenLedger, BacksUpToACopyThatCanBeRead) {
+    store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 180.0}})});
+    ledger().backup(folder_ / "copy.db");
+    EXPECT_EQ(Reader(folder_ / "copy.db").count(point("press-1")).readings, 1U);
+    EXPECT_THAT(failure_of([&] { ledger().backup(folder_ / "no/folder/copy.db"); }), HasSubstr("no/folder"));
+}
+
+TEST_F(OpenLedger, ShowsViewsWithPlainNames) {
+    ledger();
+    SQLite::Database database(plant_.store.path, SQLite::OPEN_READONLY);
+    for (const char* view : {"summary", "verdict", "alarm", "event", "refused_row"})
+        EXPECT_NO_THROW(database.execAndGet(std::string("SELECT count(*) FROM ") + view)) << view;
+}
+
+}  // namespace
+}  // namespace slipledger::ledger
