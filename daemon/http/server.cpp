@@ -30,6 +30,7 @@ constexpr std::size_t most_connections = 256;
 constexpr std::uint32_t header_limit = 16 * 1024;
 constexpr std::chrono::seconds idle_timeout{30};
 constexpr std::chrono::milliseconds accept_pause{100};
+constexpr std::chrono::seconds linger{2};
 
 using HttpRequest = beast::http::request<beast::http::empty_body>;
 using HttpResponse = beast::http::response<beast::http::string_body>;
@@ -53,6 +54,19 @@ tcp::acceptor listen_on(net::io_context& network, const std::optional<config::En
     return acceptor;
 }
 
+// True where the client sent what is not HTTP as it should be, and is there to hear so.
+bool is_foul(const boost::system::error_code& error) {
+    const boost::system::error_code of_http = beast::http::error::bad_method;
+    return error.category() == of_http.category() && error != beast::http::error::end_of_stream &&
+           error != beast::http::error::partial_message;
+}
+
+Answer answer_to_foul(const boost::system::error_code& error) {
+    if (error == beast::http::error::header_limit || error == beast::http::error::buffer_overflow)
+        return problem(431, "Header too long", "a request's header may have 16 KiB");
+    return problem(400, "Foul request", error.message());
+}
+
 HttpResponse response_to(const HttpRequest& request, Answer answer) {
     HttpResponse response(static_cast<beast::http::status>(answer.status), request.version());
     response.set(beast::http::field::content_type, answer.content_type);
@@ -73,6 +87,14 @@ bool may_ask(const HttpRequest& request) {
 }
 
 }  // namespace
+
+// Threads: network thread only.
+struct HttpServer::Connection {
+    explicit Connection(tcp::socket socket) : stream(std::move(socket)) {}
+
+    beast::tcp_stream stream;
+    beast::flat_buffer buffer{header_limit};
+};
 
 // Threads: its pool's one thread, but for construction, `use` and destruction.
 struct HttpServer::ReaderThread {
@@ -141,31 +163,52 @@ net::awaitable<void> HttpServer::accept_loop() {
 }
 
 net::awaitable<void> HttpServer::serve(tcp::socket socket) {
-    beast::tcp_stream stream(std::move(socket));
+    const auto connection = std::make_shared<Connection>(std::move(socket));
     const std::shared_ptr<Sessions> sessions = sessions_;
-    const std::shared_ptr<ReaderThread> reader = reader_;
     const auto leave = [&sessions](beast::tcp_stream* ended) { sessions->remove(ended); };
-    sessions->add(&stream);
-    const std::unique_ptr<beast::tcp_stream, decltype(leave)> registered(&stream, leave);
+    sessions->add(&connection->stream);
+    const std::unique_ptr<beast::tcp_stream, decltype(leave)> registered(&connection->stream, leave);
+    while (co_await serve_request(connection) && acceptor_.is_open()) {
+    }
+}
 
-    beast::flat_buffer buffer(header_limit);
+net::awaitable<bool> HttpServer::serve_request(std::shared_ptr<Connection> connection) {
+    const std::shared_ptr<ReaderThread> reader = reader_;
+    beast::http::request_parser<beast::http::empty_body> parser;
+    parser.header_limit(header_limit);
+    connection->stream.expires_after(idle_timeout);
+    const auto [error, read] =
+        co_await beast::http::async_read_header(connection->stream, connection->buffer, parser, as_values);
+    if (error && !is_foul(error)) co_return false;
+    const bool goes_on = !error && parser.is_done();  // else bytes are left that nobody will read
+    const HttpRequest request = parser.release();
+    Answer reply = problem(405, "Only GET here", "nothing can be changed over HTTP; use the slipledger command");
+    if (error) {
+        reply = answer_to_foul(error);
+    } else if (may_ask(request)) {
+        std::string target(request.target());
+        reply = co_await net::co_spawn(reader->pool, reader->answer_to(std::move(target), reader->plant),
+                                       net::use_awaitable);
+    }
+    HttpResponse response = response_to(request, std::move(reply));
+    response.keep_alive(goes_on && request.keep_alive());
+    connection->stream.expires_after(idle_timeout);
+    const auto [write_error, written] = co_await beast::http::async_write(connection->stream, response, as_values);
+    if (!goes_on && !write_error) co_await let_peer_read(connection);
+    co_return !write_error && response.keep_alive();
+}
+
+// Closing with bytes unread resets the connection, and the peer may lose its answer: the end is announced, and what still
+// comes is read and dropped for a moment.
+net::awaitable<void> HttpServer::let_peer_read(std::shared_ptr<Connection> connection) {
+    boost::system::error_code ignored;
+    connection->stream.socket().shutdown(tcp::socket::shutdown_send, ignored);
+    connection->stream.expires_after(linger);
     for (;;) {
-        beast::http::request_parser<beast::http::empty_body> parser;
-        parser.header_limit(header_limit);
-        stream.expires_after(idle_timeout);
-        const auto [read_error, read] = co_await beast::http::async_read(stream, buffer, parser, as_values);
-        if (read_error) co_return;
-        const HttpRequest request = parser.release();
-        Answer reply = problem(405, "Only GET here", "nothing can be changed over HTTP; use the slipledger command");
-        if (may_ask(request)) {
-            std::string target(request.target());
-            reply = co_await net::co_spawn(reader->pool, reader->answer_to(std::move(target), reader->plant),
-                                           net::use_awaitable);
-        }
-        const HttpResponse response = response_to(request, std::move(reply));
-        stream.expires_after(idle_timeout);
-        const auto [write_error, written] = co_await beast::http::async_write(stream, response, as_values);
-        if (write_error || !response.keep_alive() || !acceptor_.is_open()) co_return;
+        connection->buffer.clear();
+        const auto space = connection->buffer.prepare(header_limit);
+        const auto [error, size] = co_await connection->stream.async_read_some(space, as_values);
+        if (error) co_return;
     }
 }
 

@@ -35,9 +35,12 @@ public:
 private:
     struct ReaderThread;
     class Sessions;
+    struct Connection;
 
     boost::asio::awaitable<void> accept_loop();
     boost::asio::awaitable<void> serve(boost::asio::ip::tcp::socket socket);
+    boost::asio::awaitable<bool> serve_request(std::shared_ptr<Connection> connection);  // false: the last one
+    boost::asio::awaitable<void> let_peer_read(std::shared_ptr<Connection> connection);
 
     boost::asio::ip::tcp::acceptor acceptor_;
     std::shared_ptr<ReaderThread> reader_;
