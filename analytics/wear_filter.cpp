@@ -21,8 +21,10 @@ constexpr double hourly_gain_share = 0.3;   // of a meter's gain error that come
 constexpr double stop_repeatability = 0.3;  // of the meter's accuracy, from one stop to the next
 constexpr double outside_error = 0.3;       // of predicted leakage per unit of distance in ln dp, ln mu
 constexpr double huber_limit = 2.5;
-constexpr double longest_step = 0.5;  // in any logarithm, by one sighting
-constexpr double loose = 0.10;        // of predicted leakage: relinearise while less sure than this
+constexpr double misfit_memory = 100.0;  // summaries
+constexpr double most_misfit = 4.0;      // standard deviations counted of one summary
+constexpr double longest_step = 0.5;     // in any logarithm, by one sighting
+constexpr double loose = 0.10;           // of predicted leakage: relinearise while less sure than this
 constexpr int relinearisations = 3;
 constexpr double speed_told_apart = 1.3;  // speed must vary by this factor before the speed term is learned
 constexpr double jump_sd = 0.35;
@@ -143,7 +145,8 @@ double WearFilter::surprise(const Summary& summary) const {
     const Moments* m = dominant(summary);
     if (!primed_ || m == nullptr) return unknown;
     const Expected expected = expect(belief_.mean, *m, m == &summary.judged[1]);
-    const Sighting seen{expected.design, m->leakage_lpm - expected.leakage_lpm, noise_variance(*m, expected.worn_lpm)};
+    const Sighting seen{expected.design, m->leakage_lpm - expected.leakage_lpm,
+                        inflation() * noise_variance(*m, expected.worn_lpm)};
     return seen.innovation / std::sqrt(stats::innovation_variance(belief_, seen));
 }
 
@@ -172,6 +175,9 @@ void WearFilter::feed_mean(const Moments& m, bool compensating, bool settled) {
     Expected expected = expect(start, m, compensating);
     Sighting seen{expected.design, m.leakage_lpm - expected.leakage_lpm, noise_variance(m, expected.worn_lpm)};
     const double before = stats::innovation_variance(belief_, seen) - seen.variance;
+    const double plain_surprise = std::abs(seen.innovation) / std::sqrt(before + seen.variance);
+    seen.variance *= inflation();
+    learn_misfit(plain_surprise);
     const double surprise = std::abs(seen.innovation) / std::sqrt(before + seen.variance);
     if (surprise > huber_limit) seen.variance = (before + seen.variance) * surprise / huber_limit - before;
     const bool relinearise = before > square(loose * expected.worn_lpm);
@@ -185,6 +191,13 @@ void WearFilter::feed_mean(const Moments& m, bool compensating, bool settled) {
         seen.innovation = m.leakage_lpm - expected.leakage_lpm - expected.design.dot(start - trial);
     }
     take(seen, settled);
+}
+
+// Three terms fit no pump exactly: gaps bend, and duty dwells where they do. What that adds to the scatter is learned,
+// so that an hour at an unusual pressure is not taken for a change; a single wild hour hardly counts.
+void WearFilter::learn_misfit(double surprise) {
+    means_ = std::min(means_ + 1.0, misfit_memory);
+    misfit_ += (square(std::min(surprise, most_misfit)) - misfit_) / means_;
 }
 
 // The covariance within a summary, turned to its own axes, where each axis is a sighting of its own of the slopes a w,
@@ -211,11 +224,12 @@ void WearFilter::feed_contrasts(const Moments& m, bool settled) {
         const double expected = slip + seen.design(displacement) * belief_.mean(displacement);
         seen.innovation = along.dot(leakage) / swing - expected;
         const double size = seen.design.head<3>().cwiseAbs().sum();
-        seen.variance = square(2.0 * m.standard_error_lpm) + square(contrast_error * size);
+        seen.variance = square(2.0 * m.standard_error_lpm) + square(contrast_error * size) * (1.0 + contrasts_);
         const double spread = std::sqrt(stats::innovation_variance(belief_, seen));
         const double surprise = std::abs(seen.innovation) / spread;
         if (surprise > huber_limit) seen.variance += spread * spread * (surprise / huber_limit - 1.0);
         take(seen, settled);
+        contrasts_ += 1.0;
     }
 }
 

@@ -125,8 +125,9 @@ public:
     // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
-        io(self.belief_.mean, self.belief_.covariance, self.primed_, self.plate_cm3_, self.reference_.pressure_rise_bar,
-           self.reference_.viscosity_pas, self.reference_.density_kgm3, self.reference_.speed_rpm);
+        io(self.belief_.mean, self.belief_.covariance, self.primed_, self.contrasts_, self.means_, self.misfit_,
+           self.plate_cm3_, self.reference_.pressure_rise_bar, self.reference_.viscosity_pas,
+           self.reference_.density_kgm3, self.reference_.speed_rpm);
         for (auto* span : {&self.pressure_, &self.viscosity_, &self.laminar_, &self.speed_}) io(span->low, span->high);
     }
     // After a restore: what follows from the plant file. Not computed: bookkeeping.
@@ -141,6 +142,8 @@ private:
     };
     Expected expect(const WearVector& mean, const Moments& moments, bool compensating) const;
     double noise_variance(const Moments& moments, double worn_lpm) const;
+    double inflation() const { return misfit_ > 1.0 ? misfit_ : 1.0; }
+    void learn_misfit(double surprise);
     void prime(const Summary& summary);
     void feed_mean(const Moments& moments, bool compensating, bool settled);
     void feed_contrasts(const Moments& moments, bool settled);
@@ -152,6 +155,9 @@ private:
 
     WearBelief belief_;
     bool primed_ = false;
+    double contrasts_ = 0.0;  // fed so far
+    double means_ = 0.0;      // fed so far, up to the memory of `misfit_`
+    double misfit_ = 1.0;     // mean square of lately standardised innovations: over 1, the pump bends the three terms
     double plate_cm3_ = unknown;
     LeakageState reference_;
     SeenSpan pressure_;
