@@ -44,7 +44,7 @@ struct QuantityFacts {
 
 // Limits are wide on purpose: they catch a wrong unit or a broken wire, not a sick pump. Common practice, no source.
 inline constexpr std::array<QuantityFacts, quantity_count> quantity_table{{
-    {Quantity::outlet_pressure, "outlet_pressure", "bar", -1.1, 1000.0, "181.2"},
+    {Quantity::outlet_pressure, "outlet_pressure", "bar", -10.0, 1000.0, "181.2"},
     {Quantity::shaft_speed, "shaft_speed", "rpm", -10000.0, 10000.0, "1482"},
     {Quantity::case_drain_flow, "case_drain_flow", "L/min", -50.0, 2000.0, "3.1"},
     {Quantity::fluid_temperature, "fluid_temperature", "degC", -60.0, 200.0, "48.6"},

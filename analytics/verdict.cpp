@@ -42,6 +42,8 @@ std::string_view name_of(UnjudgedReason reason) {
             return "shared-drain";
         case UnjudgedReason::no_basis:
             return "no-basis";
+        case UnjudgedReason::no_temperature:
+            return "no-temperature";
         case UnjudgedReason::silent:
             return "silent";
     }
@@ -92,7 +94,7 @@ Level most_urgent_allowed(const SectionSpec& spec, Basis basis, double laminar_s
 }
 
 UnjudgedReason unjudged_reason(const Knowledge& knowledge) {
-    if (!knowledge.temperature) return UnjudgedReason::no_basis;
+    if (!knowledge.temperature) return UnjudgedReason::no_temperature;
     if (knowledge.shared_drain) return UnjudgedReason::shared_drain;
     if (!knowledge.judged_yet) return UnjudgedReason::no_data;
     if (knowledge.learning_h_left > 0.0) return UnjudgedReason::learning;

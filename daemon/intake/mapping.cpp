@@ -59,6 +59,20 @@ std::string perhaps(const std::string& nearest, std::string otherwise) {
 
 }  // namespace
 
+bool is_of_pump(analytics::Quantity quantity) {
+    using analytics::Quantity;
+    switch (quantity) {
+        case Quantity::shaft_speed:
+        case Quantity::shaft_power:
+        case Quantity::running:
+        case Quantity::hour_meter:
+        case Quantity::fluid_temperature:
+        case Quantity::inlet_pressure:
+        case Quantity::particle_count: return true;
+        default: return false;
+    }
+}
+
 Mapping::Mapping(const config::Feed& feed, const ledger::Directory& directory, std::span<const config::Pump> pumps)
     : feed_(feed) {
     const auto id = directory.feeds.find(feed.id);
@@ -130,7 +144,7 @@ const Place* Mapping::fixed_place(const config::Target& target, const ledger::Di
     if (places == nullptr) throw std::runtime_error("feed " + feed_.id + ": no such pump: " + target.pump);
     const auto found = place(*places, target.pump, target.section);
     if (!found) throw std::runtime_error("feed " + feed_.id + ": " + found.error().message());
-    return *found;
+    return is_of_pump(target.quantity) ? places->pump : *found;
 }
 
 const Measure* Mapping::column(std::string_view name) const {

@@ -39,6 +39,9 @@ struct PumpPlaces {
     std::map<std::string, const Place*, std::less<>> sections;
 };
 
+// Quantities of the shaft and the oil: a row that names a section still means its pump by them.
+bool is_of_pump(analytics::Quantity quantity);
+
 // A column, key or tag that is a reading.
 struct Measure {
     std::string name;  // as the feed writes it

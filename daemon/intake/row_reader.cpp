@@ -267,7 +267,9 @@ void RowReader::add(const Measure& measure, const WrittenNumber& number, std::st
         row_lost_ = true;
         return batch_.refuse_row(Refusal(Reason::missing_pump, {}, "the row names no pump", "key or column " + in_quotes(feed_.pump_column)));
     }
-    if (measure.place == nullptr && !measure.section.empty()) {
+    if (measure.place == nullptr && is_of_pump(measure.quantity)) {
+        place = pump_->pump;
+    } else if (measure.place == nullptr && !measure.section.empty()) {
         const auto of_section = mapping_.place(*pump_, pump_name_, measure.section);
         if (!of_section) return batch_.refuse_cell(of_section.error());
         place = *of_section;

@@ -1,5 +1,6 @@
 #include "daemon/ledger/writer.hpp"
 
+#include <algorithm>
 #include <condition_variable>
 #include <deque>
 #include <exception>
@@ -33,6 +34,7 @@ struct Writer::Inside {
 
     void work();
     bool wait_for_work(std::unique_lock<std::mutex>& lock);
+    bool a_file_ends() const;
     void run_job(std::unique_lock<std::mutex>& lock);
     void commit(std::unique_lock<std::mutex>& lock);
     void close_step(std::unique_lock<std::mutex>& lock);
@@ -94,16 +96,21 @@ bool Writer::Inside::wait_for_work(std::unique_lock<std::mutex>& lock) {
     for (;;) {
         if (stopping && batches.empty() && jobs.empty()) return false;
         if (!jobs.empty() || may_close) return true;
-        const bool hurry = stopping || quiet_over || queued >= rows_in_a_hurry;
-        if (!batches.empty() && hurry) return true;
-        const auto something = [this] {
-            return stopping || !jobs.empty() || queued >= rows_in_a_hurry || (quiet_over && !batches.empty());
+        const auto rows_may_go = [this] {
+            return !batches.empty() && (stopping || quiet_over || queued >= rows_in_a_hurry || a_file_ends());
         };
+        if (rows_may_go()) return true;
+        const auto something = [&] { return stopping || !jobs.empty() || rows_may_go(); };
         if (quiet_over)
             wake.wait(lock, something);
         else
             quiet_over = !wake.wait_for(lock, commit_interval, something);
     }
+}
+
+// Whoever reads a folder of files waits for each one's receipt before taking the next.
+bool Writer::Inside::a_file_ends() const {
+    return std::ranges::any_of(batches, [](const Waiting& waiting) { return waiting.batch.receipt.has_value(); });
 }
 
 void Writer::Inside::run_job(std::unique_lock<std::mutex>& lock) {

@@ -55,20 +55,19 @@ DataFacts data_facts(const Asked& asked, const config::Pump& pump, const config:
 LifeFacts life_facts(const Asked& asked, const config::Pump& pump, const config::Section& section,
                      const SpeakingTrack& speaking) {
     LifeFacts facts;
-    const std::vector<ledger::Life> lives = ledger::lives_of(asked.reader.events(pump.id), section.id);
     if (speaking.newest_day) {
         facts.number = speaking.newest_day->verdict.life;
         facts.running_hours = speaking.newest_day->verdict.life_running_h;
     }
-    for (const ledger::Life& life : lives)
-        if (life.number == facts.number) facts.started = life.since;
-    if (facts.started) {
-        facts.baseline = "when new";
-        return facts;
+    const std::vector<ledger::Event> events = asked.reader.events(pump.id);
+    const std::optional<Instant> oldest = asked.reader.oldest(asked.directory.pumps.at(pump.id));
+    for (const ledger::Life& life : ledger::lives_of(events, section.id)) {
+        if (life.number != facts.number) continue;
+        facts.started = life.since ? life.since : oldest;
+        facts.baseline = ledger::watched_from_new(life, ledger::facts_of(events), oldest) ? "when new" : "when watching began";
     }
-    facts.started = asked.reader.oldest(asked.directory.pumps.at(pump.id));
-    facts.baseline = "when watching began";
-    if (facts.started) facts.baseline += " (" + local_date(*facts.started, asked.plant.time_zone) + ")";
+    if (facts.baseline == "when watching began" && facts.started)
+        facts.baseline += " (" + local_date(*facts.started, asked.plant.time_zone) + ")";
     return facts;
 }
 

@@ -58,6 +58,9 @@ std::string unjudged(const SentenceFacts& facts) {
             return subject(facts) + " is not judged by itself: one drain meter serves it and others.";
         case UnjudgedReason::no_basis:
             return subject(facts) + " is not judged: neither a case drain flow nor a delivery flow comes in for it.";
+        case UnjudgedReason::no_temperature:
+            return subject(facts) + " is not judged: its fluid temperature, and so the oil's viscosity, is not known; only its raw "
+                                    "drain share is watched.";
         default: return subject(facts) + " is not judged yet: no steady operating point under load has come in.";
     }
 }
@@ -92,7 +95,7 @@ std::string in_hand(const SentenceFacts& facts) {
 
 std::string step(const SentenceFacts& facts) {
     const double ratio_of_step = facts.verdict.step_ratio;
-    if (!std::isfinite(ratio_of_step)) return {};
+    if (!std::isfinite(ratio_of_step) || facts.verdict.level <= Level::sound) return {};  // it has gone again
     return fmt::format(" It rose at one step, {} times.", ratio(ratio_of_step));
 }
 
@@ -126,6 +129,8 @@ std::string wear_action(const SentenceFacts& facts) {
 std::string what_to_do(const SentenceFacts& facts) {
     if (!facts.silent_since.empty()) return "Check its feed.";
     if (facts.verdict.level == Level::unjudged) {
+        if (facts.verdict.reason == UnjudgedReason::no_temperature)
+            return "Fit a temperature sensor at its inlet, or give the tank's thermometer to its reservoir.";
         const bool sensors = facts.verdict.reason == UnjudgedReason::no_basis ||
                              facts.verdict.reason == UnjudgedReason::shared_drain;
         return sensors ? "Fit a flow meter of its own to have it judged." : "Keep its readings coming.";

@@ -218,7 +218,7 @@ TEST(Course, SaysWhyItHasNoLevelYet) {
     blind.has_temperature_sensor = false;
     Course without(Basis::case_drain);
     without.begin_life({}, blind);
-    EXPECT_EQ(without.quote(simulated_day(0)).reason, UnjudgedReason::no_basis);
+    EXPECT_EQ(without.quote(simulated_day(0)).reason, UnjudgedReason::no_temperature);
 }
 
 // reference: Course::finish_day - hand-worked: 3 judged of 48 running hours are under a tenth

@@ -64,7 +64,7 @@ TEST(Verdict, SaysWhyThereIsNoLevel) {
     k.shared_drain = true;
     EXPECT_EQ(unjudged_reason(k), UnjudgedReason::shared_drain);
     k.temperature = false;
-    EXPECT_EQ(unjudged_reason(k), UnjudgedReason::no_basis);
+    EXPECT_EQ(unjudged_reason(k), UnjudgedReason::no_temperature);
     EXPECT_EQ(name_of(UnjudgedReason::seldom_judged), "seldom-judged");
 }
 
