@@ -20,11 +20,11 @@ def free_port():
 def write_plant_file(example, folder, webhook_url):
     """A copy of the example plant with the demonstration's own paths and ports, comments and all."""
     text = example.read_text(encoding="utf-8")
-    (folder / "weekly-files").mkdir(exist_ok=True)
+    (folder / "logger-files").mkdir(exist_ok=True)
     for written, wanted in {
         '"path": "veneer-mill.db"': f'"path": {json.dumps(str(folder / "ledger.db"))}',
         '"listen": "127.0.0.1:7310"': f'"listen": "127.0.0.1:{free_port()}"',
-        '"folder": "weekly-files"': f'"folder": {json.dumps(str(folder / "weekly-files"))}',
+        '"folder": "logger-files"': f'"folder": {json.dumps(str(folder / "logger-files"))}',
         '"log": "alerts.ndjson"': f'"log": {json.dumps(str(folder / "alerts.ndjson"))}',
         '"url": "http://127.0.0.1:7390/alerts"': f'"url": "{webhook_url}"',
         '"listen": "127.0.0.1:7380"': f'"listen": "127.0.0.1:{free_port()}"',
@@ -45,7 +45,7 @@ class Daemon:
         self._plant = plant
         self._log = folder / "daemon.log"
         self._process = None
-        self.drop_folder = folder / "weekly-files"
+        self.drop_folder = folder / "logger-files"
         self.alert_log = folder / "alerts.ndjson"
         listens = [line.split('"listen": "')[1].split('"')[0]
                    for line in plant.read_text(encoding="utf-8").splitlines() if '"listen": "' in line]
@@ -113,8 +113,7 @@ class Daemon:
         if files:
             return f"{len(files)} files to take"
         status = self.json_of("status")
-        if status["marks"]:
-            return f"{status['marks']} work marks"
-        if status["pending"]:
-            return f"{status['pending']} notices to deliver"
+        waiting = sum(target["pending"] for target in status["deliveries"])
+        if status["marks"] or waiting:
+            return f"{status['marks']} pumps to judge, {waiting} notices to deliver"
         return None

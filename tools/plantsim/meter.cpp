@@ -15,7 +15,7 @@ constexpr double calibration_cst = 30.0;
 }  // namespace
 
 MeterClass pressure_class() {
-    return {.gain_spread = 0.003, .zero_spread = 0.2, .noise = 0.5, .last_digit = 0.1};
+    return {.gain_spread = 0.003, .zero_spread = 0.15, .noise = 0.1, .noise_share = 0.003, .last_digit = 0.1};
 }
 MeterClass speed_class() {
     return {.gain_spread = 0.0003, .noise = 0.6, .last_digit = 1.0, .least = 5.0};
