@@ -63,7 +63,7 @@ private:
             next_date_ = checkpoint->date + 1;
             seam_ = view_.days.day(checkpoint->date).end;
             run_.began = checkpoint->date;
-            for (const ledger::DayRecord& day : reader_.days(track_.id, checkpoint->date, checkpoint->date))
+            for (const ledger::DayRecord& day : reader_.days(track_.id, checkpoint->date, checkpoint->date + 1))
                 run_.finished_days.push_back(day.verdict);
         } else if (checkpoint) {  // of an earlier version: what it led to is judged anew with it
             emit_from_ = Instant::min();

@@ -14,8 +14,8 @@ sys.path.insert(0, str(Path(__file__).resolve().parent))
 from proving_ground import (SLOWNESS, Connection, Site, compare, free_port, mill, plantsim, run_test, say,  # noqa: E402
                             tcp_feed, want)
 
-PUMPS = ("press-1", "lathe-1", "loader-1")
-FROM = "2025-07-20"
+PUMPS = ("barker-1", "lathe-1", "loader-1")
+FROM = "2025-08-05"  # barker-1 breaks on the 28th: there is something to tell
 DAYS = 30 if SLOWNESS == 1 else 15
 DISPUTED = 0.01
 QUANTITIES = ("outlet_pressure", "shaft_speed", "case_drain_flow", "fluid_temperature", "delivery_flow")
@@ -26,9 +26,9 @@ def make_readings(programs, folder):
     plantsim(programs, "--csv", folder / "mill.csv", "--pumps", ",".join(PUMPS), "--from", FROM, "--days", DAYS)
     with open(folder / "mill.csv", encoding="utf-8", newline="") as lines:
         rows = [tuple(row[name] for name in NAMES) for row in csv.DictReader(lines)]
-    at = next(i for i, row in enumerate(rows) if row[0] >= f"{FROM[:8]}25T11:00:00Z")
-    before = next(row for row in reversed(rows[:at]) if row[1] == "press-1")
-    late = (f"{FROM[:8]}25T10:59:59Z", *before[1:])
+    at = next(i for i, row in enumerate(rows) if row[0] >= "2025-08-12T11:00:00Z")
+    before = next(row for row in reversed(rows[:at]) if row[1] == "barker-1")
+    late = ("2025-08-12T10:59:59Z", *before[1:])
     return rows[:at] + [late] + rows[at:], late
 
 
@@ -144,7 +144,7 @@ def test(programs, folder):
         if reference is None:
             reference = kept
             say("  ".join(f"{what}: {len(text)} bytes" for what, text in kept.items()))
-            want(all(len(text) > 1000 for what, text in kept.items() if what != "alerts"), "little to compare")
+            want(all(len(text) > 1000 for what, text in kept.items()), "little to compare")
         compare(reference, kept, name)
         say(f"byte-equal: {name}")
 

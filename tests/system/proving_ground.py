@@ -61,12 +61,17 @@ def example(name):
     return json.loads(string_or_comment.sub(lambda m: m[0] if m[0].startswith('"') else "", text))
 
 
+# Warm oil and a little more leakage are news here, so that alarms come and go all through a test.
+TOUCHY = {"over_temperature_c": {"watch": 46, "plan": 48, "act": 50, "deadband": 0.5},
+          "leakage_ratio": {"watch": 1.08, "plan": 1.2, "act": 1.4}}
+
+
 def mill(pumps):
-    """The veneer mill with these pumps alone, no feeds and nobody to alert."""
+    """The veneer mill with these pumps alone, touchy limits, no feeds and nobody to alert."""
     plant = example("veneer-mill.json")
     plant["pumps"] = [pump for pump in plant["pumps"] if pump["id"] in pumps]
     plant["feeds"] = []
-    plant["alerts"] = {}
+    plant["alerts"] = {"limits": TOUCHY}
     plant.pop("http", None)
     return plant
 

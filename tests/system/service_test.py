@@ -134,6 +134,7 @@ def keeps_refused_lines(programs, folder):
     want(total == {"stored": len(REFUSED), "refused": len(REFUSED)}, f"answered {total}; wanted {len(REFUSED)} of each")
     faults = {fault["line"]: fault["reason"] for reply in replies for fault in reply["faults"]}
     with sqlite3.connect(f"file:{site.ledger}?mode=ro", uri=True) as ledger:
+        ledger.text_factory = lambda text: text.decode(errors="replace")  # a foul line is kept as it came
         kept = ledger.execute("SELECT feed, place, code, message, text FROM refused_row ORDER BY id").fetchall()
     want(len(kept) == len(REFUSED), f"{len(kept)} refused lines are kept; wanted {len(REFUSED)}")
     for number, ((line, code), (feed, place, kept_code, message, text)) in enumerate(zip(REFUSED.items(), kept)):

@@ -31,10 +31,10 @@ def told_of(programs, folder, name, rows, others):
     folder.mkdir()
     file = folder / f"{name}.csv"
     with open(file, "w", encoding="utf-8", newline="") as out:
-        writer = csv.DictWriter(out, rows[0].keys(), lineterminator="\n")
+        writer = csv.DictWriter(out, {**rows[0], **others[0]}.keys(), lineterminator="\n")
         writer.writeheader()
         writer.writerows([*others, *rows])
-    site = Site(programs, folder, mill(("press-2", "trimmer-1")))
+    site = Site(programs, folder, {**mill(("press-2", "trimmer-1")), "alerts": {}})
     site.command("load", file)
     told = {row["pump"]: row for row in site.json_of("fleet")}
     want(told["trimmer-1"]["level"] == "sound",
