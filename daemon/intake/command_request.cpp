@@ -50,6 +50,14 @@ Checked<CommandRequest> read_load(const json& given) {
     return request;
 }
 
+Checked<CommandRequest> read_backup(const json& given) {
+    CommandRequest request;
+    request.kind = CommandRequest::Kind::backup;
+    request.file = text_at(given, "file");
+    if (!request.file.starts_with('/')) return bad("file", in_quotes(request.file), "an absolute path");
+    return request;
+}
+
 }  // namespace
 
 Checked<CommandRequest> read_command(std::string_view line, const ledger::Directory& directory) {
@@ -58,6 +66,7 @@ Checked<CommandRequest> read_command(std::string_view line, const ledger::Direct
     const std::string what = text_at(given, "do");
     CommandRequest request;
     if (what == "load") return read_load(given);
+    if (what == "backup") return read_backup(given);
     if (what == "event") {
         request.kind = CommandRequest::Kind::event;
         const auto event = read_event(given.value("event", json()), directory);
@@ -66,7 +75,7 @@ Checked<CommandRequest> read_command(std::string_view line, const ledger::Direct
         return request;
     }
     if (what == "drain") request.kind = CommandRequest::Kind::drain;
-    else if (what != "status") return bad("do", in_quotes(what), "load, event, status or drain");
+    else if (what != "status") return bad("do", in_quotes(what), "load, event, backup, status or drain");
     return request;
 }
 
@@ -90,6 +99,9 @@ std::string command_line(const CommandRequest& request) {
                        {"body", body}}}};
             break;
         }
+        case CommandRequest::Kind::backup:
+            asked = {{"do", "backup"}, {"file", request.file}};
+            break;
         case CommandRequest::Kind::status:
             asked = {{"do", "status"}};
             break;

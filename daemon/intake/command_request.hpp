@@ -1,7 +1,7 @@
 // What the operator's command asks a running daemon, one JSON object a line, read and checked without any socket.
 //   {"do":"load","feed":"...","file":"name","again":false}   with the open file passed along (SCM_RIGHTS)
 //   {"do":"event","event":{"kind":"note","pump":"...","section":"...","at":"2026-03-01T06:00:00Z","by":"...","body":{}}}
-//   {"do":"status"}   {"do":"drain"}
+//   {"do":"backup","file":"/absolute/path"}   {"do":"status"}   {"do":"drain"}
 #pragma once
 
 #include <string>
@@ -14,7 +14,7 @@
 namespace slipledger::intake {
 
 struct CommandRequest {
-    enum class Kind { load, event, status, drain };
+    enum class Kind { load, event, backup, status, drain };
 
     Kind kind = Kind::status;
     std::string feed;  // of a load; empty: plain CSV or NDJSON

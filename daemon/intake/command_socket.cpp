@@ -8,6 +8,7 @@
 
 #include <array>
 #include <cerrno>
+#include <filesystem>
 #include <mutex>
 #include <optional>
 #include <stdexcept>
@@ -170,6 +171,9 @@ net::awaitable<void> CommandSocket::answer(std::shared_ptr<Peer> peer, std::stri
             case CommandRequest::Kind::drain:
                 said = co_await do_drain();
                 break;
+            case CommandRequest::Kind::backup:
+                said = co_await do_backup(std::move(request.file));
+                break;
             case CommandRequest::Kind::load:
                 said = co_await do_load(peer, std::move(request));
                 break;
@@ -201,6 +205,22 @@ net::awaitable<std::string> CommandSocket::do_status() {
 
 net::awaitable<std::string> CommandSocket::ask_status() { co_return world_.status() + "\n"; }
 net::awaitable<bool> CommandSocket::ask_all_judged() { co_return world_.all_judged(); }
+
+net::awaitable<std::string> CommandSocket::back_up(std::string file) {
+    if (std::filesystem::exists(file)) co_return refusal_line(file + " exists already; a copy goes into a file of its own");
+    std::string failure;
+    try {
+        world_.writer.backup(file);
+    } catch (const std::exception& e) {
+        failure = e.what();
+    }
+    co_return failure.empty() ? std::string("{\"ok\":true}\n") : refusal_line(failure);
+}
+
+net::awaitable<std::string> CommandSocket::do_backup(std::string file) {
+    auto copied = back_up(std::move(file));
+    co_return co_await net::co_spawn(acts_.get_executor(), std::move(copied), net::use_awaitable);
+}
 
 net::awaitable<void> CommandSocket::drain_writer() {
     world_.writer.drain();

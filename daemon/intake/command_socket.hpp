@@ -2,6 +2,7 @@
 // daemon runs, commands that write ask here. Requests: command_request.hpp; answers, one JSON object a line:
 //   load   {"bytes":..,"of_bytes":..,"rows":..} now and then, then {"ok":true,"receipt":{...}} or {"ok":false,"reason":".."}
 //   event  {"ok":true,"id":..}     status  what the daemon says     drain  {"ok":true} once everything stored is judged
+//   backup {"ok":true} once the copy is whole
 #pragma once
 
 #include <atomic>
@@ -64,6 +65,7 @@ private:
     net::awaitable<std::string> do_event(ledger::Event event);
     net::awaitable<std::string> do_status();
     net::awaitable<std::string> do_drain();
+    net::awaitable<std::string> do_backup(std::string file);
     net::awaitable<std::string> do_load(std::shared_ptr<Peer> peer, CommandRequest request);
     net::awaitable<void> tell_progress(std::shared_ptr<Peer> peer);
     net::awaitable<void> write(std::shared_ptr<Peer> peer, std::string text);
@@ -73,6 +75,7 @@ private:
     net::awaitable<std::string> ask_status();
     net::awaitable<bool> ask_all_judged();
     net::awaitable<void> drain_writer();
+    net::awaitable<std::string> back_up(std::string file);
     net::awaitable<std::string> load(std::shared_ptr<Peer> peer, CommandRequest request);
 
     std::string path_;

@@ -58,8 +58,11 @@ public:
         expect_ok(client_.ask(request));
     }
 
-    void backup(const std::string& /*path*/) override {
-        throw std::runtime_error("the daemon holds the ledger; stop it, or copy with `sqlite3 LEDGER \".backup FILE\"`");
+    void backup(const std::string& path) override {
+        intake::CommandRequest request;
+        request.kind = intake::CommandRequest::Kind::backup;
+        request.file = std::filesystem::absolute(path);
+        expect_ok(client_.ask(request));
     }
 
 private:
@@ -102,7 +105,11 @@ public:
         if (!analyst.wait_until_judged(longest_judging)) throw std::runtime_error("not everything could be judged");
     }
 
-    void backup(const std::string& path) override { writer_.backup(path); }
+    void backup(const std::string& path) override {
+        if (std::filesystem::exists(path))
+            throw std::runtime_error(path + " exists already; a copy goes into a file of its own");
+        writer_.backup(path);
+    }
 
 private:
     intake::FindReceipt find_receipt() const {
