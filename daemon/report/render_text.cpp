@@ -25,7 +25,7 @@ std::string with_range(const Ranged& range, int decimals, double factor = 1.0) {
 
 // One line of the table of figures: what, how much, and beside it what to hold it against.
 std::string figure(std::string_view name, std::string_view value, std::string_view beside = {}) {
-    return paragraph("  " + cell(name, 24), fmt::format("{}{}{}", value, beside.empty() ? "" : "   ", beside));
+    return paragraph("  " + cell(name, 24), fmt::format("{}{}{}", value, beside.empty() ? "" : "; ", beside));
 }
 
 std::string flow(double lpm, const config::Plant& plant) {
@@ -43,10 +43,18 @@ std::string hours_in_hand_text(const analytics::HoursInHand& in_hand) {
     return fmt::format("{} h ({} to {}) to the {} limit", hours(in_hand.mid), hours(in_hand.low), high, in_hand.limit);
 }
 
+// The same, short enough for a column.
+std::string hours_in_hand_cell(const analytics::HoursInHand& in_hand) {
+    if (!std::isfinite(in_hand.low)) return "-";
+    if (!std::isfinite(in_hand.mid)) return fmt::format("at least {} h", hours(in_hand.low));
+    const std::string high = std::isfinite(in_hand.high) ? hours(in_hand.high) : std::string("open");
+    return fmt::format("{} h ({} to {})", hours(in_hand.mid), hours(in_hand.low), high);
+}
+
 std::string heading(const SectionHealth& health, const config::Plant& plant) {
     std::string out = fmt::format("{}  {}\n", printable(health.pump), printable(health.pump_name));
-    out += fmt::format("section {}, {} {}, life {}", printable(health.section), printable(health.model), health.part,
-                       health.life.number);
+    out += fmt::format("section {}, {}{}{}, life {}", printable(health.section), printable(health.model),
+                       health.model.empty() ? "" : " ", health.part, health.life.number);
     if (!health.machine.empty()) out += fmt::format(", {}", printable(health.machine));
     out += '\n';
     if (health.as_of) out += fmt::format("as of {}\n", local_minute(*health.as_of, plant.time_zone));
@@ -64,23 +72,26 @@ std::string efficiency_line(const SectionHealth& health, const analytics::DayVer
 }
 
 std::string trend_text(const analytics::Trend& trend) {
-    if (!std::isfinite(trend.per_1000_h.value)) return "-";
     return fmt::format("{:+.2f} ({:+.2f} to {:+.2f}) in ratio per 1000 h{}", trend.per_1000_h.value,
                        trend.per_1000_h.low, trend.per_1000_h.high, trend.established ? "" : ", not established");
 }
 
+// What is not known has no line.
 std::string figures(const SectionHealth& health, const config::Plant& plant) {
     if (!health.verdict) return {};
     const analytics::DayVerdict& day = *health.verdict;
-    std::string out = figure("leakage ratio", with_range(day.leakage_ratio, 2), "1 = as new");
-    out += efficiency_line(health, day);
-    out += figure("leakage", flow(day.leakage_lpm, plant),
-                  fmt::format("{} above healthy, {} kW", flow(day.excess_lpm, plant), plain(day.leakage_kw, 2)));
-    out += figure("clearance growth",
-                  std::isfinite(day.clearance_growth_percent) ? plain(day.clearance_growth_percent, 0) + " %" : "-");
-    out += figure("trend", trend_text(day.trend));
+    std::string out;
+    if (std::isfinite(day.leakage_ratio.value))
+        out += figure("leakage ratio", with_range(day.leakage_ratio, 2), "1 = as new");
+    if (std::isfinite(day.efficiency.value)) out += efficiency_line(health, day);
+    if (std::isfinite(day.leakage_lpm))
+        out += figure("leakage", flow(day.leakage_lpm, plant),
+                      fmt::format("{} above healthy, {} kW", flow(day.excess_lpm, plant), plain(day.leakage_kw, 2)));
+    if (std::isfinite(day.clearance_growth_percent))
+        out += figure("clearance growth", plain(day.clearance_growth_percent, 0) + " %");
+    if (std::isfinite(day.trend.per_1000_h.value)) out += figure("trend", trend_text(day.trend));
     if (day.trend.onset) out += figure("since", local_date(*day.trend.onset, plant.time_zone));
-    out += figure("hours in hand", hours_in_hand_text(day.hours_in_hand));
+    if (std::isfinite(day.hours_in_hand.low)) out += figure("hours in hand", hours_in_hand_text(day.hours_in_hand));
     if (day.cause != analytics::CauseKind::none)
         out += figure("likely cause", fmt::format("{} ({:.0f} %)", name_of(day.cause), day.cause_weight * 100.0));
     if (std::isfinite(health.yearly_cost))
@@ -139,7 +150,7 @@ std::string fleet_text(const std::vector<SectionHealth>& fleet, const config::Pl
         const analytics::DayVerdict day = health.verdict.value_or(analytics::DayVerdict{});
         const std::string name = health.only_section ? health.pump : health.pump + "/" + health.section;
         out += fmt::format("{} {} {} {}\n", level_word(health.level, paper), cell(printable(name), 24),
-                           ratio_cell(day.leakage_ratio), hours_in_hand_text(day.hours_in_hand).substr(0, 21));
+                           ratio_cell(day.leakage_ratio), hours_in_hand_cell(day.hours_in_hand));
         out += paragraph(std::string(13, ' '), health.sentence);
     }
     out += rule_off();
