@@ -2,17 +2,17 @@
 
 #include <algorithm>
 #include <cmath>
-#include <limits>
 #include <tuple>
 #include <utility>
 
 #include "analytics/change.hpp"
 #include "analytics/checkpoint.hpp"
+#include "analytics/day_tally.hpp"
 #include "analytics/duty.hpp"
 #include "analytics/excess_slope.hpp"
 #include "analytics/flow.hpp"
 #include "analytics/leakage.hpp"
-#include "analytics/prognosis.hpp"
+#include "analytics/outlook.hpp"
 #include "analytics/rated_efficiency.hpp"
 #include "analytics/verdict.hpp"
 #include "analytics/wear_filter.hpp"
@@ -34,25 +34,6 @@ constexpr RuleTiming two_judged_days{.judgements = 2};
 double hours(Milliseconds span) {
     return std::chrono::duration<double, std::ratio<3600>>(span).count();
 }
-
-// What a day gathers from its summaries; weights are judged hours.
-struct DayTally {
-    DutyDay duty;
-    double weight = 0.0;
-    double leakage = 0.0;
-    double excess = 0.0;
-    double power = 0.0;
-    double slip = 0.0;
-    double slip_weight = 0.0;
-    double step_ratio = unknown;
-    bool judged = false;
-
-    template <typename Self, typename Io>
-    static void each_field(Self& self, Io& io) {
-        io(self.duty.running_h, self.duty.judged_h, self.weight, self.leakage, self.excess, self.power, self.slip,
-           self.slip_weight, self.step_ratio, self.judged);
-    }
-};
 
 // Means of a summary over its judged regimes, by points.
 struct SummaryMeans {
@@ -133,14 +114,12 @@ struct Course::State {
     void carry_to(Instant end);
     void feed(const Summary& summary, Instant end);
     SummaryVerdict verdict_on(const Summary& summary, double distance) const;
-    void gather(const SummaryVerdict& verdict, const Summary& summary);
+    double slip_of(const SummaryVerdict& verdict, const SummaryMeans& means) const;
 
     Level allowed() const { return most_urgent_allowed(spec, basis, filter.laminar_span()); }
     Level most_urgent() const;
     double share_judged(std::int32_t date) const;
     std::pair<Level, UnjudgedReason> standing(std::int32_t date) const;
-    HoursInHand hours_in_hand(const RatedEfficiency& efficiency) const;
-    Trend trend() const;
     DayVerdict day_so_far(const DaySpan& day, const RatedEfficiency& efficiency) const;
     void stamp(DayVerdict& verdict) const;
 };
@@ -197,8 +176,7 @@ void Course::State::count_hours(const Summary& summary) {
     waiting_running_h += summary.running_h;
     life_running_h += summary.running_h;
     life_judged_h += summary.judged_h;
-    today.duty.running_h += summary.running_h;
-    today.duty.judged_h += summary.judged_h;
+    today.count(summary);
 }
 
 void Course::State::carry_to(Instant end) {
@@ -219,9 +197,9 @@ void Course::State::feed(const Summary& summary, Instant end) {
     filter.feed(summary, baseline_settled);
     fed_running_h += summary.running_h;
     fed_judged_h += summary.judged_h;
-    today.judged = true;
+    today.mark_fed();
     if (!watching) return;
-    if (change.follow(filter.wear(), end, life_running_h)) today.step_ratio = std::exp(change.step().ln_size);
+    if (change.follow(filter.wear(), end, life_running_h)) today.mark_step(std::exp(change.step().ln_size));
     judge_step(end);
 }
 
@@ -241,22 +219,11 @@ SummaryVerdict Course::State::verdict_on(const Summary& summary, double distance
     return verdict;
 }
 
-void Course::State::gather(const SummaryVerdict& verdict, const Summary& summary) {
-    if (!std::isfinite(verdict.leakage_lpm)) return;
-    const double weight = summary.judged_h;
-    today.weight += weight;
-    today.leakage += weight * verdict.leakage_lpm;
-    today.excess += weight * verdict.excess_lpm;
-    today.power += weight * verdict.leakage_kw;
-    const SummaryMeans means = means_of(summary, filter);
-    const double slip =
-        slip_coefficient({.leakage_lpm = verdict.leakage_lpm,
-                          .viscosity_pas = means.viscosity_cst * spec.fluid.density_kgm3(means.temperature_c) * 1e-6,
-                          .displacement_cm3 = spec.displacement_cm3,
-                          .pressure_rise_bar = means.pressure_rise_bar});
-    if (!std::isfinite(slip)) return;
-    today.slip += weight * slip;
-    today.slip_weight += weight;
+double Course::State::slip_of(const SummaryVerdict& verdict, const SummaryMeans& means) const {
+    return slip_coefficient({.leakage_lpm = verdict.leakage_lpm,
+                             .viscosity_pas = means.viscosity_cst * spec.fluid.density_kgm3(means.temperature_c) * 1e-6,
+                             .displacement_cm3 = spec.displacement_cm3,
+                             .pressure_rise_bar = means.pressure_rise_bar});
 }
 
 Level Course::State::most_urgent() const {
@@ -267,7 +234,7 @@ Level Course::State::most_urgent() const {
 }
 
 double Course::State::share_judged(std::int32_t date) const {
-    const DutyDay total = duty.total(date, today.duty);
+    const DutyDay total = duty.total(date, today.duty());
     return total.running_h > 0.0 ? total.judged_h / total.running_h : unknown;
 }
 
@@ -283,53 +250,6 @@ std::pair<Level, UnjudgedReason> Course::State::standing(std::int32_t date) cons
     return {reason == UnjudgedReason::none ? Level::sound : Level::unjudged, reason};
 }
 
-HoursInHand Course::State::hours_in_hand(const RatedEfficiency& efficiency) const {
-    HoursInHand left;
-    if (!filter.primed() || learning()) return left;
-    const RuleLimits& limits = spec.limits;
-    const double flow = theoretical_flow_lpm(spec.displacement_cm3, spec.reference.speed_rpm, spec.max_stroke_fraction);
-    const double healthy_percent = 100.0 * std::exp(filter.healthy_leakage(spec.reference).ln) / flow;
-    const std::array<std::pair<Rule, double>, 3> ends{
-        {{Rule::leakage_ratio, limits.leakage_ratio.act},
-         {Rule::efficiency, 1.0 + limits.efficiency_points_lost.act / efficiency.points_per_ratio},
-         {Rule::drain_share, limits.drain_share_percent.act / healthy_percent}}};
-    double first = std::numeric_limits<double>::infinity();
-    for (const auto& [rule, ratio] : ends) {
-        if (rule == Rule::drain_share && basis != Basis::case_drain) continue;
-        if (!(ratio > 1.0) || ratio >= first) continue;
-        first = ratio;
-        left.limit = name_of(rule);
-    }
-    if (!std::isfinite(first)) return left;
-    const WearBelief& belief = filter.belief();
-    const PassageQuantiles passage = passage_quantiles({.ln_ratio = belief.mean(ln_wear),
-                                                        .drift_per_day = belief.mean(drift),
-                                                        .ratio_variance = belief.covariance(ln_wear, ln_wear),
-                                                        .drift_variance = belief.covariance(drift, drift),
-                                                        .covariance = belief.covariance(ln_wear, drift),
-                                                        .ln_limit = std::log(first)});
-    const auto finite = [](double value) { return std::isfinite(value) ? value : unknown; };
-    left.low = finite(passage.low_h);
-    if (!drift_established && std::exp(belief.mean(ln_wear)) < first) return left;
-    left.mid = finite(passage.mid_h);
-    left.high = finite(passage.high_h);
-    return left;
-}
-
-Trend Course::State::trend() const {
-    Trend trend;
-    trend.established = drift_established;
-    if (above_sound) trend.onset = onset;
-    if (!filter.primed()) return trend;
-    const WearBelief& belief = filter.belief();
-    const double per_drift = std::exp(belief.mean(ln_wear)) * 1000.0 / hours_per_day;
-    const double reach = quantile_90 * std::sqrt(belief.covariance(drift, drift));
-    trend.per_1000_h = {.value = per_drift * belief.mean(drift),
-                        .low = per_drift * (belief.mean(drift) - reach),
-                        .high = per_drift * (belief.mean(drift) + reach)};
-    return trend;
-}
-
 DayVerdict Course::State::day_so_far(const DaySpan& day, const RatedEfficiency& efficiency) const {
     DayVerdict verdict;
     verdict.day = day;
@@ -340,17 +260,10 @@ DayVerdict Course::State::day_so_far(const DaySpan& day, const RatedEfficiency& 
     verdict.efficiency_at_rated = efficiency.at_rated;
     if (!change.step().active)
         verdict.clearance_growth_percent = 100.0 * clearance_growth(filter.coefficients(), verdict.leakage_ratio.value);
-    if (today.weight > 0.0) {
-        verdict.leakage_lpm = today.leakage / today.weight;
-        verdict.excess_lpm = today.excess / today.weight;
-        verdict.leakage_kw = today.power / today.weight;
-    }
-    if (today.slip_weight > 0.0) verdict.slip_coefficient = today.slip / today.slip_weight;
+    today.fill(verdict);
     if (filter.primed()) verdict.zero_lpm = filter.belief().mean(meter_zero);
-    verdict.hours_in_hand = hours_in_hand(efficiency);
-    verdict.step_ratio = today.step_ratio;
-    verdict.running_h = today.duty.running_h;
-    verdict.judged_h = today.duty.judged_h;
+    if (!learning())
+        verdict.hours_in_hand = hours_to(filter, first_limit(filter, spec, basis, efficiency), drift_established);
     verdict.life_running_h = life_running_h;
     verdict.life_judged_h = life_judged_h;
     verdict.learning_h_left = std::max(spec.baseline.least.h - fed_judged_h, 0.0);
@@ -370,7 +283,9 @@ void Course::State::judge_drift() {
 // What follows from the alarms as they stand: level, reason, trend and cause.
 void Course::State::stamp(DayVerdict& verdict) const {
     std::tie(verdict.level, verdict.reason) = standing(verdict.day.date);
-    verdict.trend = trend();
+    verdict.trend.per_1000_h = growth_per_1000_h(filter);
+    verdict.trend.established = drift_established;
+    if (above_sound) verdict.trend.onset = onset;
     const Cause cause = simplest_cause(
         {.level = verdict.level,
          .step = change.step().active,
@@ -426,7 +341,7 @@ void Course::begin_life(const LifeStart& life, const SectionSpec& spec) {
     }
     next->changes = std::move(state_->changes);
     next->duty = state_->duty;
-    next->today.duty = state_->today.duty;
+    next->today.keep_hours_of(state_->today);
     next->last_date = state_->last_date;
     next->basis = state_->basis;
     next->spec = spec;
@@ -451,7 +366,7 @@ SummaryVerdict Course::take(const Summary& summary) {
     s.judge_summary(summary, end);
     if (fit && !running_in) s.feed(summary, end);
     SummaryVerdict verdict = s.verdict_on(summary, distance);
-    s.gather(verdict, summary);
+    if (fit) s.today.add(verdict, s.slip_of(verdict, means_of(summary, s.filter)), summary.judged_h);
     if (fit && !running_in)
         s.slope.add({.leakage_lpm = verdict.leakage_lpm, .healthy_lpm = verdict.leakage_lpm - verdict.excess_lpm});
     std::tie(verdict.level, verdict.reason) = s.standing(s.last_date);
@@ -467,7 +382,7 @@ DayVerdict Course::quote(const DaySpan& day) const {
 DayVerdict Course::finish_day(const DaySpan& day) {
     State& s = *state_;
     const RatedEfficiency efficiency = rated_efficiency(s.filter, s.spec, s.basis);
-    const bool judged = s.today.judged && !s.learning();
+    const bool judged = s.today.fed() && !s.learning();
     if (judged) s.judge_drift();
     DayVerdict verdict = s.day_so_far(day, efficiency);
     if (judged) s.judge_day(verdict, efficiency);
@@ -475,7 +390,7 @@ DayVerdict Course::finish_day(const DaySpan& day) {
     if (above && !s.above_sound) s.onset = day.begin;
     s.above_sound = above;
     s.stamp(verdict);
-    s.duty.add(day.date, s.today.duty);
+    s.duty.add(day.date, s.today.duty());
     s.last_date = day.date;
     s.today = DayTally{};
     return verdict;

@@ -38,13 +38,13 @@ struct DaySpan {
 // Why a section has no level. `none`: it has one.
 enum class UnjudgedReason : std::uint8_t {
     none,
-    no_data,        // nothing judged yet at all
-    learning,       // fewer judged running hours than the baseline wants
-    seldom_judged,  // under 10 % of the last 30 days' running hours could be judged
-    shared_drain,   // one drain meter for several sections, not told apart
-    no_basis,       // the sensors fitted give none
-    no_temperature, // the oil's viscosity is unknown: only the raw drain share is watched
-    silent,         // only ever laid over by a report: newest reading 24 h older than the plant's newest
+    no_data,         // nothing judged yet at all
+    learning,        // fewer judged running hours than the baseline wants
+    seldom_judged,   // under 10 % of the last 30 days' running hours could be judged
+    shared_drain,    // one drain meter for several sections, not told apart
+    no_basis,        // the sensors fitted give none
+    no_temperature,  // the oil's viscosity is unknown: only the raw drain share is watched
+    silent,          // only ever laid over by a report: newest reading 24 h older than the plant's newest
 };
 
 std::string_view name_of(UnjudgedReason reason);  // "no-data", "learning", ...
