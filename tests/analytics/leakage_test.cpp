@@ -63,8 +63,9 @@ TEST(SlipCoefficient, OfAWorkedExample) {
 }
 
 // On paper: all laminar, g = cube root of 2 = 1.25992. Shares 1 : 0.15 : 0.06 and w = 2: g^3 + 0.21 g = 2.42 has its
-// root at 1.29046 (2.14900 + 0.27100 = 2.42000). No laminar part: g = w. reference: clearance_growth - hand-worked:
-// figures above
+// root at 1.29046 (2.14900 + 0.27100 = 2.42000). No laminar part: g = w.
+//
+// reference: clearance_growth - hand-worked: figures above
 TEST(ClearanceGrowth, SolvesTheCubicOfTheGap) {
     EXPECT_NEAR(clearance_growth({1.0, 0.0, 0.0}, 2.0), 0.25992, 1e-5);
     EXPECT_NEAR(clearance_growth({1.0, 0.15, 0.06}, 2.0), 0.29046, 1e-5);
