@@ -18,19 +18,23 @@ using testing::HasSubstr;
 double value(const ledger::Row& row, Quantity quantity) { return row.value[index_of(quantity)]; }
 bool has(const ledger::Row& row, Quantity quantity) { return (row.present >> index_of(quantity) & 1) != 0; }
 
+// The speed is the shaft's, though the row names a section of a double pump.
 TEST(RowReader, ReadsAnNdjsonRowByQuantityNames) {
     const auto read = read_all(mill::ndjson_feed(),
                                R"({"time":"2026-03-01T06:00:00Z","pump":"press-2","section":"A","outlet_pressure":182.4,)"
                                R"("shaft_speed":1482})"
                                "\n");
-    ASSERT_EQ(read.batch.rows.size(), 1U);
-    const ledger::Row& row = read.batch.rows[0];
-    EXPECT_EQ(row.time.time_since_epoch().count(), 1772344800000);
-    EXPECT_EQ(row.point, mill::press_2_a);
-    EXPECT_EQ(row.feed, ledger::FeedId{7});
-    EXPECT_EQ(value(row, Quantity::outlet_pressure), 182.4);
-    EXPECT_EQ(value(row, Quantity::shaft_speed), 1482.0);
-    EXPECT_FALSE(has(row, Quantity::case_drain_flow));
+    ASSERT_EQ(read.batch.rows.size(), 2U);
+    const ledger::Row& of_section = read.batch.rows[0];
+    const ledger::Row& of_shaft = read.batch.rows[1];
+    EXPECT_EQ(of_section.time.time_since_epoch().count(), 1772344800000);
+    EXPECT_EQ(of_section.point, mill::press_2_a);
+    EXPECT_EQ(of_section.feed, ledger::FeedId{7});
+    EXPECT_EQ(value(of_section, Quantity::outlet_pressure), 182.4);
+    EXPECT_FALSE(has(of_section, Quantity::case_drain_flow));
+    EXPECT_EQ(of_shaft.point, mill::press_2);
+    EXPECT_EQ(of_shaft.source, of_section.source);
+    EXPECT_EQ(value(of_shaft, Quantity::shaft_speed), 1482.0);
     EXPECT_EQ(read.batch.sources, 1U);
     EXPECT_TRUE(read.batch.refused.empty());
 }
