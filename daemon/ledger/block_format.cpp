@@ -84,6 +84,7 @@ struct BlockCodec::Inside {
     std::vector<std::int64_t> scaled;
     std::vector<std::uint64_t> numbers;
     std::vector<std::uint8_t> flags;
+    std::vector<std::uint16_t> feeds;
 
     void write_times(std::span<const std::int32_t> offsets);
     void write_column(const HourCells::Column& column);
@@ -91,10 +92,11 @@ struct BlockCodec::Inside {
     void write_feeds(const HourCells::Column& column, bool per_cell);
     std::span<const std::byte> pack();
 
-    std::vector<std::int32_t> read_times(ByteReader& in);
-    HourCells::Column read_column(ByteReader& in, std::size_t rows);
+    void read_times(ByteReader& in, std::vector<std::int32_t>& offsets);
+    void read_column(ByteReader& in, std::size_t rows, HourCells::Column& column);
+    void read_sparse_column(ByteReader& in, std::uint8_t head, HourCells::Column& column);
     void read_values(ByteReader& in, std::uint8_t head, std::span<double> into);
-    void read_feeds(ByteReader& in, bool per_cell, HourCells::Column& column);
+    void read_feeds(ByteReader& in, bool per_cell, std::span<std::uint16_t> into);
     std::span<const std::byte> unpack(std::span<const std::byte> packed);
 };
 
@@ -119,11 +121,11 @@ void BlockCodec::Inside::write_times(std::span<const std::int32_t> offsets) {
     write_width_and_planes(out, numbers);
 }
 
-std::vector<std::int32_t> BlockCodec::Inside::read_times(ByteReader& in) {
+void BlockCodec::Inside::read_times(ByteReader& in, std::vector<std::int32_t>& offsets) {
     const std::uint64_t rows = in.varint();
     require(rows <= most_rows, "too many rows");
-    std::vector<std::int32_t> offsets(rows);
-    if (rows == 0) return offsets;
+    offsets.resize(rows);
+    if (rows == 0) return;
     std::uint64_t at = in.varint();
     const std::uint64_t unit = in.varint();
     require(at < hour_ms && unit < hour_ms, "time outside the hour");
@@ -136,7 +138,6 @@ std::vector<std::int32_t> BlockCodec::Inside::read_times(ByteReader& in) {
         require(at < hour_ms, "time outside the hour");
         offsets[i] = static_cast<std::int32_t>(at);
     }
-    return offsets;
 }
 
 void BlockCodec::Inside::write_column(const HourCells::Column& column) {
@@ -188,9 +189,18 @@ void BlockCodec::Inside::write_values(std::uint8_t digits, bool steps) {
     write_width_and_planes(out, numbers);
 }
 
-HourCells::Column BlockCodec::Inside::read_column(ByteReader& in, std::size_t rows) {
+void BlockCodec::Inside::read_column(ByteReader& in, std::size_t rows, HourCells::Column& column) {
     const std::uint8_t head = in.byte();
-    HourCells::Column column;
+    column.values.resize(rows);
+    column.feeds.resize(rows);
+    column.disputed.clear();
+    if ((head & (sparse | with_disputes)) != 0) return read_sparse_column(in, head, column);
+    read_feeds(in, (head & feed_per_cell) != 0, column.feeds);
+    read_values(in, head, column.values);
+}
+
+void BlockCodec::Inside::read_sparse_column(ByteReader& in, std::uint8_t head, HourCells::Column& column) {
+    const std::size_t rows = column.values.size();
     flags.assign(rows, 1);
     if ((head & sparse) != 0) in.bits(flags);
     if ((head & with_disputes) != 0) {
@@ -198,21 +208,25 @@ HourCells::Column BlockCodec::Inside::read_column(ByteReader& in, std::size_t ro
         in.bits(column.disputed);
     }
     const auto filled = static_cast<std::size_t>(std::ranges::count(flags, std::uint8_t{1}));
-    const std::vector<std::uint8_t> present = flags;
+    feeds.resize(filled);
     values.resize(filled);
-    column.feeds.assign(rows, 0);
-    column.values.assign(rows, std::numeric_limits<double>::quiet_NaN());
-    numbers.assign(filled, 0);
-    if ((head & feed_per_cell) != 0)
-        read_width_and_planes(in, numbers);
-    else
-        std::ranges::fill(numbers, in.varint());
-    for (std::size_t i = 0, from = 0; i < rows; ++i)
-        if (present[i] != 0) column.feeds[i] = static_cast<std::uint16_t>(numbers[from++]);
+    read_feeds(in, (head & feed_per_cell) != 0, feeds);
     read_values(in, head, values);
-    for (std::size_t i = 0, from = 0; i < rows; ++i)
-        if (present[i] != 0) column.values[i] = values[from++];
-    return column;
+    for (std::size_t i = 0, from = 0; i < rows; ++i) {
+        column.values[i] = flags[i] != 0 ? values[from] : std::numeric_limits<double>::quiet_NaN();
+        column.feeds[i] = flags[i] != 0 ? feeds[from] : std::uint16_t{0};
+        from += flags[i];
+    }
+}
+
+void BlockCodec::Inside::read_feeds(ByteReader& in, bool per_cell, std::span<std::uint16_t> into) {
+    if (!per_cell) {
+        std::ranges::fill(into, static_cast<std::uint16_t>(in.varint()));
+        return;
+    }
+    numbers.resize(into.size());
+    read_width_and_planes(in, numbers);
+    std::ranges::transform(numbers, into.begin(), [](std::uint64_t feed) { return static_cast<std::uint16_t>(feed); });
 }
 
 void BlockCodec::Inside::read_values(ByteReader& in, std::uint8_t head, std::span<double> into) {
@@ -280,14 +294,13 @@ std::span<const std::byte> BlockCodec::encode(const HourCells& cells) {
 
 void BlockCodec::decode(std::span<const std::byte> bytes, HourCells& cells) {
     ByteReader in(inside_->unpack(bytes));
-    std::vector<std::int32_t> offsets = inside_->read_times(in);
+    const HourCells::Parts parts = cells.parts();
+    inside_->read_times(in, parts.offsets);
     const std::uint64_t used = in.varint();
     require(used >> quantity_count == 0, "holds quantities this program does not know");
-    std::array<HourCells::Column, quantity_count> columns;
     for (std::size_t q = 0; q < quantity_count; ++q)
-        if ((used >> q & 1U) != 0) columns[q] = inside_->read_column(in, offsets.size());
+        if ((used >> q & 1U) != 0) inside_->read_column(in, parts.offsets.size(), parts.columns[q]);
     require(in.at_end(), "goes on after its end");
-    cells.assign(std::move(offsets), std::move(columns));
 }
 
 }  // namespace slipledger::ledger

@@ -33,7 +33,7 @@ public:
     // The bytes stand until the next call.
     std::span<const std::byte> encode(const HourCells& cells);
 
-    // Fills `cells` (whose hour the caller has set). Throws BlockDamaged.
+    // Fills `cells`, which the caller has cleared for the hour. Throws BlockDamaged; what is in `cells` then is no hour.
     void decode(std::span<const std::byte> bytes, HourCells& cells);
 
 private:

@@ -48,7 +48,15 @@ void BlockTable::save(PointId point, const BlockAt& before, const HourCells& cel
 }
 
 BlockScan::BlockScan(SQLite::Database& database)
-    : rows_(database, "SELECT hour, data FROM hour_block WHERE point = ? AND hour >= ? AND hour < ? ORDER BY hour") {}
+    : count_(database, "SELECT count(*) FROM hour_block WHERE point = ? AND hour >= ? AND hour < ?"),
+      rows_(database, "SELECT hour, data FROM hour_block WHERE point = ? AND hour >= ? AND hour < ? ORDER BY hour") {}
+
+std::size_t BlockScan::count(PointId point, std::int64_t from, std::int64_t to) {
+    Binder(count_) << point << floor_to(from, hour_ms) << to;
+    const Resetting reset(count_);
+    count_.executeStep();
+    return static_cast<std::size_t>(count_.getColumn(0).getInt64());
+}
 
 void BlockScan::each(PointId point, std::int64_t from, std::int64_t to,
                      const std::function<void(const HourCells&)>& visit) {

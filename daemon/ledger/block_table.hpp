@@ -38,10 +38,12 @@ private:
 class BlockScan {
 public:
     explicit BlockScan(SQLite::Database& database);
+    std::size_t count(PointId point, std::int64_t from, std::int64_t to);
     void each(PointId point, std::int64_t from, std::int64_t to, const std::function<void(const HourCells&)>& visit);
 
 private:
     BlockCodec codec_;
+    SQLite::Statement count_;
     SQLite::Statement rows_;
 };
 

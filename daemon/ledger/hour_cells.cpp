@@ -164,11 +164,6 @@ void HourCells::merge(const HourCells& other, const AddDisputed& add) {
     }
 }
 
-void HourCells::assign(std::vector<std::int32_t> offsets, std::array<Column, quantity_count> columns) {
-    offsets_ = std::move(offsets);
-    columns_ = std::move(columns);
-}
-
 void HourCells::clear(std::int64_t hour) {
     hour_ = hour;
     offsets_.clear();

@@ -73,9 +73,14 @@ public:
     // Cells of the same point and hour from elsewhere.
     void merge(const HourCells& other, const AddDisputed& add);
 
-    // For the decoder: takes the parts as they are.
-    void assign(std::vector<std::int32_t> offsets, std::array<Column, analytics::quantity_count> columns);
     void clear(std::int64_t hour);
+
+    // For the decoder, which fills them in place: a reader goes through tens of thousands of hours.
+    struct Parts {
+        std::vector<std::int32_t>& offsets;
+        std::array<Column, analytics::quantity_count>& columns;
+    };
+    Parts parts() { return {offsets_, columns_}; }
 
 private:
     void make_room(std::span<const std::int32_t> offsets);

@@ -45,7 +45,7 @@ public:
 
     virtual void store(std::span<const DeliveryUpdate> updates) = 0;
 
-    // A consistent copy beside the running ledger, in small steps.
+    // A consistent copy. Nothing else is stored meanwhile; readers go on.
     virtual void backup(const std::string& path) = 0;
 };
 

@@ -8,6 +8,7 @@
 namespace slipledger::ledger {
 namespace {
 
+constexpr std::size_t most_reserved = 200'000;  // 1.6 MB a column
 constexpr double no_value = std::numeric_limits<double>::quiet_NaN();
 
 }  // namespace
@@ -28,12 +29,15 @@ void PointRowsBuilder::add(const HourCells& cells) {
     const auto last = place(to_);
     if (first >= last) return;
     const std::size_t before = rows_.times.size();
+    const std::size_t expected = std::min(hours_ * offsets.size(), most_reserved);
+    if (before == 0) rows_.times.reserve(expected);
     for (auto i = first; i < last; ++i)
         rows_.times.push_back(instant_of(cells.hour() + offsets[static_cast<std::size_t>(i)]));
     for (std::size_t q = 0; q < analytics::quantity_count; ++q) {
         const auto& values = cells.column(q).values;
         if (values.empty()) continue;
         std::vector<double>& into = rows_.columns[q];
+        if (into.empty()) into.reserve(expected);
         into.resize(before, no_value);
         into.insert(into.end(), values.begin() + first, values.begin() + last);
     }

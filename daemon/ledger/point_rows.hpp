@@ -10,7 +10,8 @@ namespace slipledger::ledger {
 // Rows come in ascending order of time. Threads: one at a time.
 class PointRowsBuilder {
 public:
-    PointRowsBuilder(std::int64_t from, std::int64_t to) : from_(from), to_(to) {}
+    // `hours`: how many blocks will come, so that room is made once.
+    PointRowsBuilder(std::int64_t from, std::int64_t to, std::size_t hours) : from_(from), to_(to), hours_(hours) {}
 
     void add(const HourCells& cells);
     void add(const RecentRow& row);
@@ -23,6 +24,7 @@ private:
 
     std::int64_t from_;
     std::int64_t to_;
+    std::size_t hours_;
     PointRows rows_;
 };
 

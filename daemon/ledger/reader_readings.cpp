@@ -18,7 +18,7 @@ std::string recent_sql(const char* rest) { return "SELECT " + recent_columns() +
 
 PointRows Reader::rows(PointId point, Instant from, Instant to) const {
     const SQLite::Transaction snapshot(connection_->database);
-    PointRowsBuilder builder(ms_of(from), ms_of(to));
+    PointRowsBuilder builder(ms_of(from), ms_of(to), connection_->blocks.count(point, ms_of(from), ms_of(to)));
     connection_->blocks.each(point, ms_of(from), ms_of(to), [&](const HourCells& cells) { builder.add(cells); });
 
     std::int64_t moved_until = always;
@@ -80,7 +80,7 @@ std::map<PointId, PointRows> Reader::filling(Instant from, Instant to) const {
             read_recent_row(row, stored);
             const auto until = moved.find(stored.point);
             if (until != moved.end() && stored.time < until->second) return;
-            builders.try_emplace(stored.point, ms_of(from), ms_of(to)).first->second.add(stored);
+            builders.try_emplace(stored.point, ms_of(from), ms_of(to), 0).first->second.add(stored);
         },
         from, to);
     std::map<PointId, PointRows> rows;

@@ -11,9 +11,9 @@ constexpr std::size_t bulk_rows = 512;  // so many rows of hours that close at o
 constexpr std::size_t points_a_move = 64;  // at a reading a second, 64 hours of cells are about 10 MB
 constexpr std::size_t crowded_rows = 60'000;  // in `recent`: from here on it is moved every few minutes of data time
 constexpr std::int64_t crowded_slice_ms = 600'000;
-// Ghosts deleted with each row stored: gone in a quarter of the time they took to come, so that an hour's end does not
-// burst upon the disk (SQLite writes the pages it empties).
-constexpr std::size_t ghosts_a_row = 4;
+// A little more than comes in is deleted, so that an hour's end does not burst upon the disk (SQLite writes the pages it
+// empties), and a few thousand rows at a time, so that no page is written twice.
+constexpr std::size_t ghosts_at_once = 4'000;
 constexpr std::int64_t laggard_ms = 3 * hour_ms;  // a point so far behind the plant does not hold up deletion
 
 std::int64_t time_of(const Row& row) { return ms_of(row.time); }
@@ -127,7 +127,7 @@ std::vector<Change> ReadingStore::store(std::span<const Row* const> rows) {
         store_point(rows, at, changes);
         at.point->rows.clear();
     }
-    delete_ghosts(ghosts_a_row * rows.size());
+    delete_ghosts(rows.size() + rows.size() / 4);
     return changes;
 }
 
@@ -247,11 +247,13 @@ void ReadingStore::move_step() {
     move(closing);
 }
 
-void ReadingStore::delete_ghosts(std::size_t most) {
+void ReadingStore::delete_ghosts(std::size_t allowed) {
+    ghosts_allowed_ += allowed;
     const std::int64_t end = ghosts_end();
-    if (ghosts_from_ >= end) return;
-    const std::int64_t reached = recent_.delete_ghosts(ghosts_from_, end, most);
+    if (ghosts_allowed_ < ghosts_at_once || ghosts_from_ >= end) return;
+    const std::int64_t reached = recent_.delete_ghosts(ghosts_from_, end, ghosts_allowed_);
     ghosts_from_ = reached >= end ? never : reached;
+    ghosts_allowed_ = 0;
 }
 
 }  // namespace slipledger::ledger

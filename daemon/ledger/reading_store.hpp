@@ -69,7 +69,7 @@ private:
     void store_hour(PointId id, std::int64_t hour, std::span<const Row* const> rows, std::span<Change> changes);
     void touch(const Point& point, std::span<const Row* const> rows, std::span<const Change> changes);
     std::int64_t ghosts_end() const;
-    void delete_ghosts(std::size_t most);
+    void delete_ghosts(std::size_t allowed);
 
     SQLite::Database& database_;
     const Directory& directory_;
@@ -83,6 +83,7 @@ private:
     HourCells cells_{0};
     HourCells moved_{0};
     std::int64_t ghosts_from_ = never;
+    std::size_t ghosts_allowed_ = 0;
     std::size_t recent_rows_ = 0;  // about: rows in `recent` that are no ghosts
 };
 
