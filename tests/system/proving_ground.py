@@ -37,7 +37,7 @@ def say(text):
     print(text, flush=True)
 
 
-def until(met, longest_s, what):
+def until(met, longest_s, what, pause_s=0.05):
     """Waits until `met()` is true; fails, naming `what`, after `longest_s` (stretched where programs are slow)."""
     end = time.monotonic() + longest_s * SLOWNESS
     while True:
@@ -45,7 +45,7 @@ def until(met, longest_s, what):
         if found:
             return found
         want(time.monotonic() < end, f"after {longest_s * SLOWNESS:.0f} s still not: {what}")
-        time.sleep(0.05)
+        time.sleep(pause_s)
 
 
 def free_port():
@@ -70,6 +70,7 @@ def mill(pumps):
     """The veneer mill with these pumps alone, touchy limits, no feeds and nobody to alert."""
     plant = example("veneer-mill.json")
     plant["pumps"] = [pump for pump in plant["pumps"] if pump["id"] in pumps]
+    plant["planned_stops"] = [stop for stop in plant["planned_stops"] if "areas" not in stop]
     plant["feeds"] = []
     plant["alerts"] = {"limits": TOUCHY}
     plant.pop("http", None)
@@ -148,7 +149,7 @@ class Site:
 
     def wait_until_done(self, longest_s=60):
         """Until every dropped file is taken, every mark judged and every notice delivered."""
-        until(lambda: not self.unfinished(), longest_s, "all taken, judged and delivered")
+        until(lambda: not self.unfinished(), longest_s, "all taken, judged and delivered", 0.3)
 
     def unfinished(self):
         want(self.daemon.poll() is None, f"the daemon ended with {self.daemon.poll()}:\n{self.said()[-1500:]}")

@@ -26,15 +26,19 @@ def make_readings(programs, folder, pump):
         return list(csv.DictReader(lines))
 
 
-def told_of(programs, folder, name, rows, others):
-    """The fleet's row of press-2 after its `rows` and those of a healthy neighbour went in."""
+def told_of(programs, folder, name, rows, others, unfitted=()):
+    """The fleet's row of press-2, whose plant file names no `unfitted` sensors, after its `rows` and those of a healthy neighbour
+    went in."""
     folder.mkdir()
     file = folder / f"{name}.csv"
     with open(file, "w", encoding="utf-8", newline="") as out:
         writer = csv.DictWriter(out, {**rows[0], **others[0]}.keys(), lineterminator="\n")
         writer.writeheader()
         writer.writerows([*others, *rows])
-    site = Site(programs, folder, {**mill(("press-2", "trimmer-1")), "alerts": {}})
+    plant = {**mill(("press-2", "trimmer-1")), "alerts": {}}
+    for quantity in unfitted:
+        next(pump for pump in plant["pumps"] if pump["id"] == "press-2")["sensors"].pop(quantity)
+    site = Site(programs, folder, plant)
     site.command("load", file)
     told = {row["pump"]: row for row in site.json_of("fleet")}
     want(told["trimmer-1"]["level"] == "sound",
@@ -73,8 +77,11 @@ def test(programs, folder):
     want_modest(row, ("unjudged", "watch"), ("learning",))
 
     blind = [{**r, "fluid_temperature": ""} for r in worn(press, last_weeks)]
-    row, text = told_of(programs, folder / "blind", "without temperature", blind, others)
+    row, text = told_of(programs, folder / "blind", "without temperature", blind, others,
+                        ("fluid_temperature",))
     want_modest(row, ("unjudged", "watch"), ("temperature",))
+    if row["level"] == "unjudged":
+        want(row["reason"] == "no-temperature", f"the reason given is {row['reason']}; wanted no-temperature")
     want("emperature" in text, "the health report does not say that no temperature is measured")
 
     fallen = [r for r in worn(press, last_weeks) if r["time"] < f"{end - timedelta(days=SILENT_DAYS):%Y-%m-%d}"]
