@@ -15,7 +15,7 @@ constexpr double quantile_95 = 1.645;  // of the standard normal: one end of a 9
 void ExcessSlope::add(const OwnReading& own) {
     healthy_[next_] = own.healthy_lpm;
     seen_[next_] = own.leakage_lpm;
-    next_ = (next_ + 1) % most;
+    next_ = static_cast<std::uint32_t>((next_ + 1) % most);
     count_ = std::min<std::uint32_t>(count_ + 1, most);
 }
 

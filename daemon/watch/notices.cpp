@@ -78,12 +78,17 @@ RuleWords words_of(analytics::Rule rule) {
     return {"", "", ""};
 }
 
+// Three digits at most, but never an exponent: "1.31", "69.8", "3110".
+std::string short_number(double value) {
+    return std::abs(value) >= 1000.0 ? fmt::format("{:.0f}", value) : fmt::format("{:.3g}", value);
+}
+
 // One line on the change itself: "Alarm raised, watch: leakage ratio 1.31, limit 1.17."
 std::string headline(const AlarmChange& change) {
     const RuleWords words = words_of(change.rule);
     std::string line = fmt::format("Alarm {}, {}: {}", name_of(change.edge), name_of(change.level), words.what);
-    if (std::isfinite(change.value)) line += fmt::format(" {:.3g}{}", change.value, words.unit);
-    if (std::isfinite(change.limit)) line += fmt::format(", limit {:.3g}{}", change.limit, words.unit);
+    if (std::isfinite(change.value)) line += fmt::format(" {}{}", short_number(change.value), words.unit);
+    if (std::isfinite(change.limit)) line += fmt::format(", limit {}{}", short_number(change.limit), words.unit);
     return line + ".";
 }
 

@@ -49,7 +49,6 @@ ledger::Event event_of(const Options& options, const config::Plant& plant, const
 int keep(const Shared& shared, const config::Plant& plant, const ledger::Event& event, const std::string& told) {
     const std::unique_ptr<Desk> desk = open_desk(plant);
     const std::int64_t id = desk->keep(event);
-    desk->wait_until_judged();
     if (shared.json)
         fmt::print("{}\n", nlohmann::ordered_json{{"id", id}, {"kind", event.kind}, {"pump", event.pump}}.dump());
     else

@@ -86,7 +86,9 @@ public:
         ledger::Event signed_event = event;
         signed_event.user = user_name();
         signed_event.entered = clock_.now();
-        return writer_.store(signed_event);
+        const std::int64_t id = writer_.store(signed_event);
+        wait_until_judged();
+        return id;
     }
 
     Loaded load(const std::string& file, const std::string& feed, bool again, const Progress& progress) override {

@@ -26,7 +26,8 @@ class Desk {
 public:
     virtual ~Desk() = default;
 
-    // Keeps the event; returns its id. std::runtime_error where it is not taken.
+    // Keeps the event; returns its id. std::runtime_error where it is not taken. A daemon judges by it in its own time; our
+    // own desk does so before it returns.
     virtual std::int64_t keep(const ledger::Event& event) = 0;
     virtual Loaded load(const std::string& file, const std::string& feed, bool again, const Progress& progress) = 0;
     // Waits until everything stored is judged. std::runtime_error where that does not come about.
