@@ -1,6 +1,6 @@
 #!/usr/bin/python3
-"""Kills the daemon at twenty moments while loggers feed it. What it then holds and has told is what an undisturbed run holds and
-has told: nothing acknowledged is lost, nothing is stored or told twice.
+"""Kills the daemon at twenty moments while loggers feed it. What it then holds and has told is what an
+undisturbed run holds and has told: nothing acknowledged is lost, nothing is stored or told twice.
 
    kill_test.py FOLDER_OF_PROGRAMS          SLIPLEDGER_SEED draws the moments"""
 import atexit

@@ -1,6 +1,7 @@
 #!/usr/bin/python3
-"""What is judged depends on what is stored, never on the order it came in. The same readings, with one cell in a hundred disputed
-and one row a second before an hour's end, go in by seven ways; all histories come out byte for byte the same.
+"""What is judged depends on what is stored, never on the order it came in. The same readings, with one cell in
+a hundred disputed and one row a second before an hour's end, go in by seven ways; all histories come out byte
+for byte the same.
 
    order_test.py FOLDER_OF_PROGRAMS          SLIPLEDGER_SEED draws disputes and blocks"""
 import csv

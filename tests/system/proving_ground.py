@@ -1,5 +1,5 @@
-"""What the tests of this folder stand on: a folder of their own, a plant file made from the examples, the daemon as a
-process, the operator's command, and one way to say that something is not as it should be.
+"""What the tests of this folder stand on: a folder of their own, a plant file made from the examples, the
+daemon as a process, the operator's command, and one way to say that something is not as it should be.
 
 A test is a script that gets the folder of the built programs. It ends only processes that it started itself."""
 import atexit

@@ -1,6 +1,6 @@
 #!/usr/bin/python3
-"""What README.md tells a reader to type does what README.md says: its logger's line and its CSV rows against the first example plant
-file, and every subcommand it lists.
+"""What README.md tells a reader to type does what README.md says: its logger's line and its CSV rows against
+the first example plant file, and every subcommand it lists.
 
    readme_test.py FOLDER_OF_PROGRAMS"""
 import json

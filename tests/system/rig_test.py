@@ -1,9 +1,10 @@
 #!/usr/bin/python3
-"""Real readings: a laboratory rig whose pump was made to leak by known grades. Slipledger, told no grade, finds them in
-order: near 1 at grade 0, more at grade 1, most at grade 2.
+"""Real readings: a laboratory rig whose pump was made to leak by known grades. Slipledger, told no grade, finds
+them in order: near 1 at grade 0, more at grade 1, most at grade 2.
 
-Outside values: the grades set by the people who ran the rig (data set "Condition monitoring of hydraulic systems", UCI
-Machine Learning Repository no. 447, CC BY 4.0), and the bands of the issue this project was built to.
+Outside values: the grades set by the people who ran the rig (data set "Condition monitoring of hydraulic
+systems", UCI Machine Learning Repository no. 447, CC BY 4.0), and the bands of the issue this project was built
+to.
 
    rig_test.py FOLDER_OF_PROGRAMS"""
 import csv

@@ -1,6 +1,6 @@
 #!/usr/bin/python3
-"""The daemon as the service manager, the operator and a failing disk meet it: signals, its lock, refused lines, the drop folder, no
-room on disk. Each part is a daemon of its own.
+"""The daemon as the service manager, the operator and a failing disk meet it: signals, its lock, refused lines,
+the drop folder, no room on disk. Each part is a daemon of its own.
 
    service_test.py FOLDER_OF_PROGRAMS"""
 import json

@@ -1,6 +1,6 @@
 #!/usr/bin/python3
-"""Pumps that cannot be judged are not judged: one with no baseline yet, one without a thermometer, one gone silent. Each is made
-to leak four times what it did, so that whoever trusts the readings alone would cry wolf.
+"""Pumps that cannot be judged are not judged: one with no baseline yet, one without a thermometer, one gone
+silent. Each is made to leak four times what it did, so that whoever trusts the readings alone would cry wolf.
 
    unjudged_test.py FOLDER_OF_PROGRAMS"""
 import csv

@@ -1,5 +1,6 @@
 #!/usr/bin/python3
-"""The pages and the API of a running daemon: what the command says is what they say, and what a foul client sends does no harm.
+"""The pages and the API of a running daemon: what the command says is what they say, and what a foul client
+sends does no harm.
 
    http_test.py FOLDER_OF_PROGRAMS"""
 import http.client
