@@ -196,6 +196,20 @@ PlantReading read_plant(std::string_view text) {
     return reading;
 }
 
+namespace {
+
+// Relative paths mean the same for the daemon and for every command, wherever each was started.
+void take_paths_from(const std::filesystem::path& folder, Plant& plant) {
+    const auto beside = [&folder](std::string& path) {
+        if (!path.empty()) path = (folder / path).string();
+    };
+    beside(plant.store.path);
+    beside(plant.alerts.log);
+    for (Feed& feed : plant.feeds) beside(feed.folder);
+}
+
+}  // namespace
+
 PlantReading read_plant_file(const std::filesystem::path& path) {
     std::error_code ignored;
     std::ifstream file;
@@ -211,7 +225,9 @@ PlantReading read_plant_file(const std::filesystem::path& path) {
                     .code = "unreadable"};
         return {.plant = std::nullopt, .faults = {std::move(fault)}};
     }
-    return read_plant(text);
+    PlantReading reading = read_plant(text);
+    if (reading.plant) take_paths_from(std::filesystem::absolute(path, ignored).parent_path(), *reading.plant);
+    return reading;
 }
 
 }  // namespace slipledger::config

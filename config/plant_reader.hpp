@@ -23,7 +23,8 @@ struct PlantReading {
 
 PlantReading read_plant(std::string_view text);
 
-// A file that cannot be read is a fault too (code "unreadable"). Relative paths in the file stay as written.
+// A file that cannot be read is a fault too (code "unreadable"). Relative paths in it are taken from the file's
+// own folder.
 PlantReading read_plant_file(const std::filesystem::path& path);
 
 }  // namespace slipledger::config

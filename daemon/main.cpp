@@ -9,6 +9,7 @@
 #include <exception>
 #include <memory>
 #include <string>
+#include <utility>
 
 #include "config/plant_reader.hpp"
 #include "daemon/clock.hpp"
@@ -88,6 +89,20 @@ SharedPlant serve(const SharedPlant& plant, const std::string& plant_file) {
     return next;
 }
 
+// A plant file without faults may still name what cannot be had: a port in use, a folder that cannot be made. At start that
+// is the end; after a SIGHUP the daemon comes up again with what it had.
+void serve_in_turn(SharedPlant plant, const std::string& plant_file) {
+    SharedPlant served;
+    while (plant) try {
+            SharedPlant next = serve(plant, plant_file);
+            served = std::exchange(plant, std::move(next));
+        } catch (const std::exception& e) {
+            if (!served) throw;
+            spdlog::error("{} cannot be served: {}; going on with what was read before", plant_file, e.what());
+            plant = std::exchange(served, nullptr);
+        }
+}
+
 int run(int argc, char** argv) {
     CLI::App app{
         "The Slipledger service: takes readings, judges pumps, tells whom it may concern.\n"
@@ -100,9 +115,9 @@ int run(int argc, char** argv) {
         return app.exit(e) == 0 ? 0 : 2;
     }
     spdlog::set_default_logger(spdlog::stderr_logger_mt("slipledgerd"));
-    SharedPlant plant = read_plant(plant_file);
+    const SharedPlant plant = read_plant(plant_file);
     if (!plant) return 3;
-    while (plant) plant = serve(plant, plant_file);
+    serve_in_turn(plant, plant_file);
     return 0;
 }
 

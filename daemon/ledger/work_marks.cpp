@@ -95,7 +95,8 @@ bool WorkMarks::settle(PumpId id, std::int64_t generation, const std::optional<I
     if (state.generation != generation) return false;
     state.mark_from.reset();
     pumps_.at(id).changed = true;
-    if (again) raise(id, ms_of(*again), std::max(state.mark_to, ms_of(*again)));
+    // A pass that was cut short replaced all that was stored after it: the next has to make everything up to now again.
+    if (again) raise(id, ms_of(*again), std::max(state.newest.value_or(ms_of(*again)), ms_of(*again)));
     return true;
 }
 

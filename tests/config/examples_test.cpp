@@ -21,6 +21,14 @@ TEST(ExamplePlants, AllLoad) {
     EXPECT_GE(count, 2);
 }
 
+TEST(ExamplePlants, TakeRelativePathsFromTheirOwnFolder) {
+    const PlantReading reading = read_plant_file(examples / "first-plant.json");
+    ASSERT_TRUE(reading);
+    EXPECT_EQ(reading.plant->store.path, (examples / "first-plant.db").string());
+    EXPECT_EQ(reading.plant->alerts.log, (examples / "alerts.ndjson").string());
+    EXPECT_EQ(reading.plant->feeds[1].folder, (examples / "night-files").string());
+}
+
 TEST(RigPlant, MapsTheColumnsOfTheDataSet) {
     const PlantReading reading = read_plant_file(examples / "rig.json");
     ASSERT_TRUE(reading) << told(reading);

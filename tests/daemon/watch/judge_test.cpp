@@ -164,6 +164,17 @@ TEST_F(JudgedHistory, ChangesWithOneLateRowAsIfItHadComeInTime) {
     EXPECT_EQ(in_blocks(late_last, late_last.size() - 1, 1), in_blocks(all, 100000, 1));
 }
 
+// Five years are more summaries than one pass takes, so this one is cut short and gone on with.
+TEST_F(JudgedHistory, IsTheSameWhereARowFromYearsAgoComesLast) {
+    std::vector<Row> all = rows();
+    Row stray = all.front();
+    stray.time -= 24h * 365 * 5;
+    std::vector<Row> stray_last = all;
+    stray_last.push_back(stray);
+    all.insert(all.begin(), stray);
+    EXPECT_EQ(in_blocks(stray_last, stray_last.size() - 1, 1), in_blocks(all, 100000, 1));
+}
+
 TEST_F(JudgedHistory, TellsTheSameNoticesHourByHourAsInOneLoad) {
     const auto told = [](std::size_t block) {
         Mill mill;
