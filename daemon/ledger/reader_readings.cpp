@@ -10,7 +10,6 @@ namespace slipledger::ledger {
 namespace {
 
 constexpr std::int64_t always = std::numeric_limits<std::int64_t>::min();
-constexpr std::int64_t never = std::numeric_limits<std::int64_t>::max();
 
 std::string recent_sql(const char* rest) { return "SELECT " + recent_columns() + " FROM recent WHERE " + rest; }
 

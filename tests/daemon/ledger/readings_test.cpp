@@ -2,8 +2,10 @@
 
 #include <gmock/gmock.h>
 
+#include <SQLiteCpp/SQLiteCpp.h>
 #include <cmath>
 #include <cstdlib>
+#include <set>
 
 #include "tests/daemon/ledger/ledger_fixture.hpp"
 
@@ -75,6 +77,75 @@ TEST_F(Readings, OfACorrectingFeedSettleTheDispute) {
     store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 170.0}}, ledger().directory().feeds.at("plc"))});
     EXPECT_THAT(column(reader().rows(point("press-1"), day_one, day_one + 1h), Quantity::outlet_pressure),
                 ElementsAre(181.0));
+}
+
+// 20 rows a second for an hour and a half are more than `recent` may hold: the watermark moves within the hour, and what is
+// told late, again or otherwise meets a block that has begun.
+TEST_F(Readings, OfACrowdedHourAreMovedBeforeItEndsAndComeBackTheSame) {
+    const PointId lathe = point("lathe");
+    const int all = 20 * 90 * 60;
+    const auto told = [&](int i) {
+        return row_of(lathe, day_one + i * 50ms, {{Quantity::outlet_pressure, 100.0 + i % 977 / 10.0}});
+    };
+    std::set<std::int64_t> watermarks;
+    for (int from = 0; from < all; from += 6000) {
+        std::vector<Row> rows;
+        for (int i = from; i < from + 6000; ++i)
+            if (i != 7) rows.push_back(told(i));
+        EXPECT_EQ(store(std::move(rows)).repeated, 0U);
+        close_all_hours();
+        watermarks.insert(SQLite::Database(plant_.store.path, SQLite::OPEN_READONLY)
+                              .execAndGet("SELECT coalesce(max(moved_until), 0) FROM point")
+                              .getInt64());
+    }
+    EXPECT_GT(watermarks.size(), 2U) << "or this tests nothing";
+    EXPECT_EQ(store({told(7)}).stored, 1U);
+    EXPECT_EQ(store({told(8)}).repeated, 1U);
+    EXPECT_EQ(store({row_of(lathe, day_one + 9 * 50ms, {{Quantity::outlet_pressure, 1.0}})}).stored, 1U);
+    close();
+    const PointRows rows = reader().rows(lathe, day_one, day_one + 2h);
+    ASSERT_THAT(rows.times, ::testing::SizeIs(all));
+    const auto& pressure = column(rows, Quantity::outlet_pressure);
+    for (int i = 0; i < all; ++i) {
+        if (i == 9)
+            EXPECT_TRUE(std::isnan(pressure[9]));
+        else
+            ASSERT_EQ(pressure[static_cast<std::size_t>(i)], 100.0 + i % 977 / 10.0) << i;
+    }
+    EXPECT_EQ(reader().count(lathe).readings, static_cast<std::uint64_t>(all));
+    EXPECT_EQ(reader().count(lathe).disputed, 1U);
+}
+
+TEST_F(Readings, ThatStillFillTheirHourCanBeHadForAllPointsAtOnce) {
+    for (const char* id : {"press-1", "lathe"})
+        store({row_of(point(id), day_one, {{Quantity::outlet_pressure, 180.0}}),
+               row_of(point(id), day_one + 2h, {{Quantity::outlet_pressure, 181.0}})});
+    close_all_hours();
+    const auto filling = reader().filling(day_one, day_one + 24h);
+    ASSERT_THAT(filling, ::testing::SizeIs(2));
+    EXPECT_THAT(filling.at(point("lathe")).times, ElementsAre(day_one + 2h));
+    EXPECT_THAT(column(filling.at(point("press-1")), Quantity::outlet_pressure), ElementsAre(181.0));
+}
+
+// What a laggard left in `recent` is neither lost nor kept from being moved when others' ghosts are deleted.
+TEST_F(Readings, OfAPumpThatFellSilentOutliveTheDeletionOfOthers) {
+    store({row_of(point("press-2"), day_one + 30min, {{Quantity::outlet_pressure, 90.0}})});
+    for (int hour = 0; hour < 8; ++hour) {
+        std::vector<Row> rows;
+        for (int i = 0; i < 3600; ++i)
+            rows.push_back(row_of(point("lathe"), day_one + hour * 1h + i * 1s, {{Quantity::outlet_pressure, 180.0}}));
+        for (std::size_t from = 0; from < rows.size(); from += 400)
+            store({rows.begin() + static_cast<std::ptrdiff_t>(from), rows.begin() + static_cast<std::ptrdiff_t>(from) + 400});
+        close_all_hours();
+    }
+    EXPECT_EQ(reader().count(point("press-2")).readings, 1U);
+    EXPECT_EQ(reader().count(point("lathe")).readings, 8U * 3600U);
+    SQLite::Database database(plant_.store.path, SQLite::OPEN_READONLY);
+    EXPECT_LT(database.execAndGet("SELECT count(*) FROM recent").getInt(), 3 * 3600) << "ghosts are deleted";
+    store({row_of(point("press-2"), day_one + 9h, {{Quantity::outlet_pressure, 91.0}})});
+    close_all_hours();
+    EXPECT_THAT(column(reader().rows(point("press-2"), day_one, day_one + 24h), Quantity::outlet_pressure),
+                ElementsAre(90.0, 91.0));
 }
 
 TEST_F(Readings, OfOnePumpWithOneSectionLieAtOnePoint) {
