@@ -156,30 +156,31 @@ net::awaitable<bool> CommandSocket::read(std::shared_ptr<Peer> peer) {
 net::awaitable<void> CommandSocket::answer(std::shared_ptr<Peer> peer, std::string line) {
     const auto asked = read_command(line, world_.writer.directory());
     std::string said;
-    if (!asked) {
-        said = refusal_line(asked.error().message());
-    } else {
-        CommandRequest request = *asked;
-        request.event.user = peer->user;
-        switch (request.kind) {
-            case CommandRequest::Kind::event:
-                said = co_await do_event(std::move(request.event));
-                break;
-            case CommandRequest::Kind::status:
-                said = co_await do_status();
-                break;
-            case CommandRequest::Kind::drain:
-                said = co_await do_drain();
-                break;
-            case CommandRequest::Kind::backup:
-                said = co_await do_backup(std::move(request.file));
-                break;
-            case CommandRequest::Kind::load:
-                said = co_await do_load(peer, std::move(request));
-                break;
-        }
+    try {
+        if (asked) said = co_await act(peer, *asked);
+        else said = refusal_line(asked.error().message());
+    } catch (const std::exception& error) {
+        spdlog::error("a command of {}: {}", peer->user, error.what());
+        said = refusal_line(error.what());
     }
     co_await write(peer, std::move(said));
+}
+
+net::awaitable<std::string> CommandSocket::act(std::shared_ptr<Peer> peer, CommandRequest request) {
+    request.event.user = peer->user;
+    switch (request.kind) {
+        case CommandRequest::Kind::event:
+            co_return co_await do_event(std::move(request.event));
+        case CommandRequest::Kind::status:
+            co_return co_await do_status();
+        case CommandRequest::Kind::drain:
+            co_return co_await do_drain();
+        case CommandRequest::Kind::backup:
+            co_return co_await do_backup(std::move(request.file));
+        case CommandRequest::Kind::load:
+            break;
+    }
+    co_return co_await do_load(peer, std::move(request));
 }
 
 net::awaitable<std::string> CommandSocket::do_event(ledger::Event event) {
@@ -189,13 +190,8 @@ net::awaitable<std::string> CommandSocket::do_event(ledger::Event event) {
 
 net::awaitable<std::string> CommandSocket::store_event(ledger::Event event) {
     event.entered = world_.clock.now();
-    try {
-        const std::int64_t id = world_.writer.store(event);
-        co_return nlohmann::json{{"ok", true}, {"id", id}}.dump() + "\n";
-    } catch (const std::exception& error) {
-        spdlog::error("an event {} could not be stored: {}", event.kind, error.what());
-        co_return refusal_line(error.what());
-    }
+    const std::int64_t id = world_.writer.store(event);
+    co_return nlohmann::json{{"ok", true}, {"id", id}}.dump() + "\n";
 }
 
 net::awaitable<std::string> CommandSocket::do_status() {
@@ -256,23 +252,18 @@ net::awaitable<std::string> CommandSocket::load(std::shared_ptr<Peer> peer, Comm
     const auto feed = feed_for_load(world_.feeds, request.feed, request.file, world_.time_zone);
     if (!feed) co_return refusal_line("no feed " + in_quotes(request.feed) + " in the plant file");
     if (!file) co_return refusal_line("no open file came with the request");
-    try {
-        const Mapping mapping(*feed, world_.writer.directory(), world_.pumps);
-        const auto told = [of = peer.get()](const LoadProgress& progress) {
-            const std::lock_guard lock(of->progress_mutex);
-            of->progress = progress;
-        };
-        const LoadWorld load_world{mapping, world_.writer, world_.clock, world_.find_receipt, &stop_, told, request.again};
-        const LoadOutcome outcome = load_file(file.get(), request.file, load_world);
-        if (outcome.end == LoadEnd::stopped) co_return refusal_line("the daemon is stopping; load the file again");
-        if (outcome.end == LoadEnd::failed) co_return refusal_line(outcome.failure);
-        nlohmann::ordered_json said{{"ok", true}};
-        said["receipt"] = nlohmann::ordered_json::parse(receipt_json(outcome, feed->id));
-        co_return said.dump() + "\n";
-    } catch (const std::exception& error) {
-        spdlog::error("load of {}: {}", request.file, error.what());
-        co_return refusal_line(error.what());
-    }
+    const Mapping mapping(*feed, world_.writer.directory(), world_.pumps);
+    const auto told = [of = peer.get()](const LoadProgress& progress) {
+        const std::lock_guard lock(of->progress_mutex);
+        of->progress = progress;
+    };
+    const LoadWorld load_world{mapping, world_.writer, world_.clock, world_.find_receipt, &stop_, told, request.again};
+    const LoadOutcome outcome = load_file(file.get(), request.file, load_world);
+    if (outcome.end == LoadEnd::stopped) co_return refusal_line("the daemon is stopping; load the file again");
+    if (outcome.end == LoadEnd::failed) co_return refusal_line(outcome.failure);
+    nlohmann::ordered_json said{{"ok", true}};
+    said["receipt"] = nlohmann::ordered_json::parse(receipt_json(outcome, feed->id));
+    co_return said.dump() + "\n";
 }
 
 net::awaitable<void> CommandSocket::tell_progress(std::shared_ptr<Peer> peer) {

@@ -62,6 +62,7 @@ private:
     net::awaitable<void> serve(std::shared_ptr<Peer> peer);
     net::awaitable<bool> read(std::shared_ptr<Peer> peer);
     net::awaitable<void> answer(std::shared_ptr<Peer> peer, std::string line);
+    net::awaitable<std::string> act(std::shared_ptr<Peer> peer, CommandRequest request);
     net::awaitable<std::string> do_event(ledger::Event event);
     net::awaitable<std::string> do_status();
     net::awaitable<std::string> do_drain();

@@ -92,13 +92,16 @@ net::awaitable<void> Session::submit(ReadBatch read) {
     if (failed_ || cut_) co_return;
     auto account = std::make_shared<const LineAccount>(std::move(read.account));
     const ledger::Instant received = world_.clock.now();
-    const auto done = [self = shared_from_this(), box = world_.postbox, account, received](const ledger::IntakeOutcome& stored) {
+    // Weak: the writer's thread may let go of its callback last, and a socket may only end on the network thread.
+    const auto done = [weak = weak_from_this(), box = world_.postbox, account, received](const ledger::IntakeOutcome& stored) {
         ledger::IntakeOutcome counts;
         counts.stored = stored.stored;
         counts.repeated = stored.repeated;
         counts.failed = stored.failed;
         counts.failure = stored.failure;
-        box->post([self, account, received, counts] { self->committed(*account, received, counts); });
+        box->post([weak, account, received, counts] {
+            if (const auto self = weak.lock()) self->committed(*account, received, counts);
+        });
     };
     ++on_their_way_;
     while (!world_.writer.try_submit(read.batch, done)) {

@@ -98,7 +98,7 @@ TEST_F(FileLoad, StopsBetweenPiecesAndLeavesNoReceipt) {
 }
 
 TEST_F(FileLoad, SaysWhyNothingCouldBeStoredAndSucceedsTheNextTime) {
-    fail_at(1);
+    fill_the_disk_once();
     const LoadOutcome failed = load(csv_rows(10));
     EXPECT_EQ(failed.end, LoadEnd::failed);
     EXPECT_THAT(failed.failure, HasSubstr("disk is full"));

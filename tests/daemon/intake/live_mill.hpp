@@ -14,7 +14,6 @@
 #include "daemon/ledger/reader.hpp"
 #include "daemon/ledger/writer.hpp"
 #include "tests/daemon/intake/mill.hpp"
-#include "tests/support/failing_ledger.hpp"
 #include "tests/support/manual_clock.hpp"
 #include "tests/support/temp_folder.hpp"
 
@@ -37,11 +36,8 @@ protected:
         if (!writer_) writer_ = std::make_unique<ledger::Writer>(ledger::open_ledger(plant_), std::chrono::milliseconds(1));
         return *writer_;
     }
-    // Instead of writer(), before its first use: the n-th call on the ledger fails.
-    void fail_at(int call) {
-        auto failing = std::make_unique<testing::FailingLedger>(ledger::open_ledger(plant_), call, testing::FailsWhen::before_storing);
-        writer_ = std::make_unique<ledger::Writer>(std::move(failing), std::chrono::milliseconds(1));
-    }
+    // Instead of writer(), before its first use: the first batches are not stored.
+    void fill_the_disk_once();
     ledger::Reader reader() const { return ledger::Reader(plant_.store.path); }
     std::uint64_t stored_readings(const std::string& pump) {
         return reader().count(*writer().directory().point(pump, "")).readings;
@@ -56,7 +52,7 @@ protected:
     std::unique_ptr<ledger::Writer> writer_;
 };
 
-// `count` rows of press-1, a second apart from 06:00 on.
+// `count` rows of press-1, a second apart from noon of the day before on.
 std::string csv_rows(int count);
 
 // Looks every few milliseconds until `done`, at most ten seconds.

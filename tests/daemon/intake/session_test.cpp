@@ -211,7 +211,7 @@ TEST_F(Sessions, AreCutWhenTheyGoOnSendingBeyondTheGrace) {
 }
 
 TEST_F(Sessions, TellTheLoggerThatNothingWasStoredAndClose) {
-    fail_at(1);
+    fill_the_disk_once();
     Logger logger(start());
     logger.send(row(0));
     EXPECT_TRUE(logger.reply().contains("failed"));
