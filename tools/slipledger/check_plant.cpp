@@ -25,9 +25,10 @@ nlohmann::ordered_json faults_json(const std::vector<config::Fault>& faults) {
 void print_plant(const std::string& file, const config::Plant& plant) {
     std::size_t sections = 0;
     for (const config::Pump& pump : plant.pumps) sections += pump.sections.size();
-    fmt::print("{}: fine\n{}: {} pumps with {} sections, {} reservoirs, {} feeds; zone {}, ledger {}\n", file, plant.name,
-               plant.pumps.size(), sections, plant.reservoirs.size(), plant.feeds.size(), plant.time_zone,
-               plant.store.path);
+    fmt::print("{}: fine\n{}: {} with {}, {}, {}; zone {}, ledger {}\n", report::printable(file),
+               report::printable(plant.name), counted(plant.pumps.size(), "pump"), counted(sections, "section"),
+               counted(plant.reservoirs.size(), "reservoir"), counted(plant.feeds.size(), "feed"), plant.time_zone,
+               report::printable(plant.store.path));
 }
 
 int run(const Shared& shared, const std::string& file) {
@@ -38,7 +39,8 @@ int run(const Shared& shared, const std::string& file) {
     else if (reading)
         print_plant(path, *reading.plant);
     else
-        for (const config::Fault& fault : reading.faults) fmt::print("{}\n", config::format_fault(fault));
+        for (const config::Fault& fault : reading.faults)
+            fmt::print("{}\n", report::printable(config::format_fault(fault)));
     return reading ? fine : answer_is_no;
 }
 

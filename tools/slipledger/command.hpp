@@ -25,7 +25,7 @@ public:
 
 // Options of all subcommands, and what the chosen one does. Threads: one.
 struct Shared {
-    std::string plant_file;
+    std::string plant_file = "/etc/slipledger/plant.json";
     bool json = false;
     std::function<int()> chosen;
 
@@ -40,6 +40,9 @@ CLI::App* add_command(CLI::App& app, Shared& shared, const std::string& name, co
 
 // The pump of that id. WrongUse, with the nearest known id, where there is none.
 const config::Pump& pump_named(const config::Plant& plant, const std::string& id);
+
+// "1 pump", "2 pumps".
+std::string counted(std::size_t count, std::string_view what);
 
 // The section of that id; with none given the pump's only one, else WrongUse.
 const config::Section& section_named(const config::Pump& pump, const std::string& id);

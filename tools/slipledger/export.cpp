@@ -129,10 +129,11 @@ int run(const Shared& shared, const Options& options) {
     const ledger::Directory directory = reader.directory();
     const std::optional<Instant> oldest = oldest_of(reader, directory);
     const std::optional<Instant> newest = reader.newest_of_plant();
+    const Instant to_the_end = newest.value_or(Instant{}) + std::chrono::milliseconds(1);
+    const Instant from = options.from.empty() ? oldest.value_or(to_the_end) : given_time(options.from, plant);
+    const Instant to = options.to.empty() ? to_the_end : given_time(options.to, plant);
     Sheet sheet(shared.json);
-    if (!oldest || !newest) return fine;
-    const Instant from = options.from.empty() ? *oldest : given_time(options.from, plant);
-    const Instant to = options.to.empty() ? *newest + std::chrono::milliseconds(1) : given_time(options.to, plant);
+    if (!newest) return fine;
     for (const NamedPoint& point : points_of(plant, directory, options.pumps))
         for (Instant at = from; at < to; at += slice) sheet.write(point, reader.rows(point.id, at, std::min(at + slice, to)));
     return fine;

@@ -8,7 +8,8 @@
 
 namespace slipledger::command {
 
-// RFC 3339; without an offset it is the plant's local time. WrongUse where it is no time.
+// RFC 3339, the seconds or the time of day left out or not; without an offset it is the plant's local time.
+// WrongUse where it is no time.
 analytics::Instant given_time(const std::string& text, const config::Plant& plant);
 
 }  // namespace slipledger::command

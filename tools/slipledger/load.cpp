@@ -33,13 +33,20 @@ Progress progress_bar(const std::string& file) {
     };
 }
 
+// True where the file held no row that could be taken.
+bool nothing_in(const nlohmann::ordered_json& receipt) {
+    return receipt.value("stored", 0) == 0 && receipt.value("repeated", 0) == 0;
+}
+
 std::string line_of(const nlohmann::ordered_json& receipt) {
     if (receipt.value("already_taken", false))
         return fmt::format("{}: taken before ({} rows), nothing read; --again reads it all the same",
                            receipt.value("file", ""), receipt.value("rows", 0));
-    return fmt::format("{}: {} rows, {} stored, {} repeated, {} refused", receipt.value("file", ""),
-                       receipt.value("rows", 0), receipt.value("stored", 0), receipt.value("repeated", 0),
-                       receipt.value("refused", 0));
+    if (nothing_in(receipt) && receipt.value("refused", 0) == 0)
+        return fmt::format("{}: nothing taken, there are no rows in it", receipt.value("file", ""));
+    return fmt::format("{}: {}{} rows, {} stored, {} repeated, {} refused", receipt.value("file", ""),
+                       nothing_in(receipt) ? "nothing taken: " : "", receipt.value("rows", 0), receipt.value("stored", 0),
+                       receipt.value("repeated", 0), receipt.value("refused", 0));
 }
 
 void print_faults(const nlohmann::ordered_json& receipt) {
@@ -53,21 +60,24 @@ int run(const Shared& shared, const Options& options) {
     const std::unique_ptr<Desk> desk = open_desk(plant);
     nlohmann::ordered_json receipts = nlohmann::ordered_json::array();
     bool all_fine = true;
+    bool all_held_something = true;
     for (const std::string& file : options.files) {
         const Loaded loaded = desk->load(file, options.feed, options.again, progress_bar(file));
         if (::isatty(STDERR_FILENO) == 1) fmt::print(stderr, "\n");
         all_fine = all_fine && loaded.fine;
         if (!loaded.fine) {
-            fmt::print(stderr, "slipledger: {}: {}\n", report::printable(file), loaded.failure);
+            fmt::print(stderr, "slipledger: {}: {}\n", report::printable(file), report::printable(loaded.failure));
             continue;
         }
         receipts.push_back(loaded.receipt);
+        all_held_something = all_held_something && !nothing_in(loaded.receipt);
         if (!shared.json) fmt::print("{}\n", report::printable(line_of(loaded.receipt)));
         print_faults(loaded.receipt);
     }
     desk->wait_until_judged();
     if (shared.json) fmt::print("{}\n", receipts.dump(2));
-    return all_fine ? fine : could_not;
+    if (!all_fine) return could_not;
+    return all_held_something ? fine : answer_is_no;
 }
 
 }  // namespace
