@@ -89,7 +89,11 @@ Answer history_api(const Request& request) {
     const config::Pump* pump = request.plant.find_pump(request.pump);
     if (pump == nullptr) return unknown_pump(request);
     const std::optional<std::string> section = parameter(request, "section");
-    const bool by_summary = parameter(request, "by") == "summary";
+    if (section && pump->find_section(*section) == nullptr)
+        return problem(400, "No such section", fmt::format("pump {} has no section \"{}\"", request.pump, *section));
+    const std::string by = parameter(request, "by").value_or("day");
+    if (by != "day" && by != "summary") return problem(400, "Foul parameter", "\"by\" is \"day\" or \"summary\"");
+    const bool by_summary = by == "summary";
     return json_answer(report::to_json(by_summary ? report::history_by_summary(request.reader, *pump, section)
                                                   : report::history_by_day(request.reader, *pump, section)));
 }

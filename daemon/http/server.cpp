@@ -13,6 +13,7 @@
 #include <optional>
 #include <set>
 #include <stdexcept>
+#include <string_view>
 #include <utility>
 
 #include "daemon/spawn.hpp"
@@ -80,6 +81,16 @@ HttpResponse response_to(const HttpRequest& request, Answer answer) {
     response.prepare_payload();
     if (request.method() == beast::http::verb::head) response.body().clear();
     return response;
+}
+
+// A page elsewhere may give its own name our address and have a browser ask here (DNS rebinding): then that name stands in
+// the request.
+bool is_for_us(const HttpRequest& request) {
+    const auto written = request[beast::http::field::host];
+    std::string_view host(written.data(), written.size());
+    const std::size_t colon = host.rfind(':');
+    if (colon != std::string_view::npos && host.find(']', colon) == std::string_view::npos) host = host.substr(0, colon);
+    return beast::iequals(beast::string_view(host.data(), host.size()), "localhost") || host == "127.0.0.1" || host == "[::1]";
 }
 
 bool may_ask(const HttpRequest& request) {
@@ -185,6 +196,8 @@ net::awaitable<bool> HttpServer::serve_request(std::shared_ptr<Connection> conne
     Answer reply = problem(405, "Only GET here", "nothing can be changed over HTTP; use the slipledger command");
     if (error) {
         reply = answer_to_foul(error);
+    } else if (!is_for_us(request)) {
+        reply = problem(421, "Not for here", "ask by the name localhost, 127.0.0.1 or [::1]");
     } else if (may_ask(request)) {
         std::string target(request.target());
         reply = co_await net::co_spawn(reader->pool, reader->answer_to(std::move(target), reader->plant),

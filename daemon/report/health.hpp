@@ -10,6 +10,7 @@
 
 #include "analytics/course.hpp"
 #include "analytics/instant.hpp"
+#include "daemon/report/dated_event.hpp"
 #include "daemon/report/episodes.hpp"
 
 namespace slipledger::report {
@@ -54,6 +55,7 @@ struct SectionHealth {
     DataFacts data;
     LifeFacts life;
     std::vector<Episode> alarms;   // open ones, most urgent first
+    std::vector<DatedEvent> events;  // the newest ones, newest first
     std::vector<std::string> notes;  // limits of the basis, conventions; plain sentences
 };
 

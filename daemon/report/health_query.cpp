@@ -17,6 +17,7 @@ namespace slipledger::report {
 namespace {
 
 constexpr double hours_a_year = 8766.0;
+constexpr std::size_t most_events = 20;
 constexpr std::int32_t duty_days = 28;  // usual duty is taken from so many days
 
 // What a report asks for once and every section of the pump uses.
@@ -169,6 +170,7 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
     }
     health.sentence = sentence(sentence_facts(asked, pump, section, health, silent));
     health.alarms = query_alarms(asked.reader, asked.directory, pump.id, section.id);
+    health.events = dated_events(asked.reader.events(pump.id), section.id, most_events);
     std::erase_if(health.alarms, [](const Episode& episode) { return episode.cleared.has_value(); });
     std::stable_sort(health.alarms.begin(), health.alarms.end(),
                      [](const Episode& a, const Episode& b) { return a.level > b.level; });

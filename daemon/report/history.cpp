@@ -33,6 +33,8 @@ HistoryRow row_of(const ledger::TrackEntry& track, const analytics::DayVerdict& 
     row.life = day.life;
     row.level = day.level;
     row.reason = reason_word(day.level, day.reason);
+    const bool nothing = day.reason == analytics::UnjudgedReason::no_data || day.reason == analytics::UnjudgedReason::no_basis;
+    row.stood_still = !row.reason.empty() && nothing && day.running_h == 0.0 && day.judged_h == 0.0;
     row.leakage_ratio = day.leakage_ratio;
     row.efficiency = day.efficiency;
     row.excess_lpm = day.excess_lpm;

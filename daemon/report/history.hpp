@@ -20,6 +20,7 @@ struct HistoryRow {
     std::int32_t life = 1;
     analytics::Level level = analytics::Level::unjudged;
     std::string reason;  // why unjudged; empty otherwise
+    bool stood_still = false;  // a day without running hours and nothing to judge
     analytics::Ranged leakage_ratio;
     std::optional<analytics::Ranged> filtered_ratio;  // by summary only
     analytics::Ranged efficiency;

@@ -66,6 +66,17 @@ ordered_json life_json(const LifeFacts& life) {
             {"baseline", life.baseline}};
 }
 
+ordered_json events_json(const std::vector<DatedEvent>& events) {
+    ordered_json out = ordered_json::array();
+    for (const DatedEvent& event : events)
+        out.push_back({{"at", rfc3339(event.at)},
+                       {"kind", event.kind},
+                       {"section", text_or_null(event.section)},
+                       {"by", text_or_null(event.by)},
+                       {"text", text_or_null(event.text)}});
+    return out;
+}
+
 }  // namespace
 
 ordered_json to_json(const SectionHealth& health) {
@@ -95,6 +106,7 @@ ordered_json to_json(const SectionHealth& health) {
             {"data", data_json(health.data)},
             {"life", life_json(health.life)},
             {"alarms", to_json(health.alarms)},
+            {"events", events_json(health.events)},
             {"notes", health.notes},
             {"cautions", cautions()}};
 }

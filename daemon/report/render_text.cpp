@@ -2,6 +2,7 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cmath>
 
 #include "analytics/units.hpp"
@@ -111,16 +112,42 @@ std::string data_text(const SectionHealth& health) {
     return out;
 }
 
+std::string ratio_cell(const Ranged& ratio) {
+    if (!std::isfinite(ratio.value)) return cell("-", 19);
+    return cell(fmt::format("{:.2f} ({:.2f} to {:.2f})", ratio.value, ratio.low, ratio.high), 19);
+}
+
+// What a person did about it, where one did.
+std::string said_of(const Episode& episode) {
+    std::string said = episode.acknowledged_by.empty() ? "" : "acknowledged by " + episode.acknowledged_by;
+    if (!episode.why.empty()) said += (said.empty() ? "" : ": ") + episode.why;
+    return said.empty() ? said : paragraph(std::string(13, ' '), printable(said));
+}
+
 std::string episode_line(const Episode& episode, const config::Plant& plant, const Paper& paper) {
     const std::string until = episode.cleared ? local_minute(*episode.cleared, plant.time_zone) : std::string("open");
     return fmt::format("{} {} {} {}\n{:13}{} to {}, {}\n", level_word(episode.level, paper),
                        cell(printable(episode.pump) + "/" + printable(episode.section), 24), cell(episode.rule, 19),
-                       episode.cause, "", local_minute(episode.raised, plant.time_zone), until, episode.state);
+                       episode.cause, "", local_minute(episode.raised, plant.time_zone), until, episode.state) +
+           said_of(episode);
 }
 
-std::string ratio_cell(const Ranged& ratio) {
-    if (!std::isfinite(ratio.value)) return cell("-", 19);
-    return cell(fmt::format("{:.2f} ({:.2f} to {:.2f})", ratio.value, ratio.low, ratio.high), 19);
+std::string event_lines(const SectionHealth& health, const config::Plant& plant) {
+    constexpr std::size_t most = 5;
+    std::string out;
+    for (std::size_t i = 0; i < std::min(most, health.events.size()); ++i) {
+        const DatedEvent& event = health.events[i];
+        const std::string by = event.by.empty() ? "" : ", by " + event.by;
+        const std::string text = event.text.empty() ? "" : ": " + event.text;
+        out += paragraph("  " + local_date(event.at, plant.time_zone) + "  ", printable(event.kind + by + text));
+    }
+    return out;
+}
+
+std::string history_line(const HistoryRow& row, const config::Plant& plant, const Paper& paper) {
+    return fmt::format("{} {} {} {} {:>8} % {:>8}\n", local_minute(row.time, plant.time_zone).substr(0, 16),
+                       cell(printable(row.section), 8), level_word(row.level, paper), ratio_cell(row.leakage_ratio),
+                       plain(row.efficiency.value * 100.0, 1), plain(row.excess_lpm, 2));
 }
 
 }  // namespace
@@ -133,7 +160,7 @@ std::string health_text(const SectionHealth& health, const config::Plant& plant,
     out += '\n' + figures(health, plant) + data_text(health);
     for (const std::string& note : health.notes) out += paragraph("  note: ", note);
     for (const Episode& alarm : health.alarms) out += "  alarm: " + alarm.rule + ", " + alarm.state + "\n";
-    return out;
+    return out + event_lines(health, plant);
 }
 
 std::string health_text(const PumpHealth& health, const config::Plant& plant, const Paper& paper) {
@@ -162,11 +189,14 @@ std::string fleet_text(const std::vector<SectionHealth>& fleet, const config::Pl
 std::string history_text(const std::vector<HistoryRow>& history, const config::Plant& plant, const Paper& paper) {
     std::string out = fmt::format("{} {} {} {} {}\n", cell("time", 16), cell("section", 8), cell("level", 12),
                                   cell("ratio (80 % range)", 19), "efficiency  excess");
-    for (const HistoryRow& row : history)
-        out += fmt::format("{} {} {} {} {:>8} % {:>8}\n", local_minute(row.time, plant.time_zone).substr(0, 16),
-                           cell(printable(row.section), 8), level_word(row.level, paper),
-                           ratio_cell(row.leakage_ratio), plain(row.efficiency.value * 100.0, 1),
-                           plain(row.excess_lpm, 2));
+    for (std::size_t i = 0; i < history.size(); ++i) {
+        const std::size_t first = i;
+        while (i < history.size() && history[i].stood_still && history[i].section == history[first].section) ++i;
+        if (const std::size_t days = i - first; days > 0)
+            out += fmt::format("... {} day{} without a verdict\n", days, days == 1 ? "" : "s");
+        if (i > first) --i;
+        else out += history_line(history[i], plant, paper);
+    }
     return out + paragraph("", fmt::format("Excess leakage in L/min; times in {}.", plant.time_zone));
 }
 

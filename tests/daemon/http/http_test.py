@@ -72,6 +72,12 @@ def foul_requests(port):
                  "/api/pumps/..%2f..%2fetc/health", "/api/pumps/press-1%00/health", "/nothing/here"):
         a_problem(get(port, path), (400, 404), f"GET {path}")
     a_problem(get(port, "/api/pumps/press-99/health"), (404,), "a pump that is not there")
+    for query in ("by=week", "by=", "section=Z"):
+        a_problem(get(port, f"/api/pumps/press-1/history?{query}"), (400,), f"history?{query}")
+    for host in ("elsewhere.example", "127.0.0.1.example:80", "", "localhost.example"):
+        a_problem(get(port, "/api/fleet", headers={"Host": host}), (421,), f"a request for the host {host!r}")
+    for host in ("localhost", "LOCALHOST:80", "127.0.0.1:1", "[::1]", f"[::1]:{port}"):
+        want(get(port, "/healthz", headers={"Host": host})[0] == 200, f"a request for the host {host} is not answered")
     a_problem(raw(port, b"GET /healthz HTTP/1.1\r\nHost: x\r\nX-Long: " + b"a" * 200_000 + b"\r\n\r\n"), (400, 431),
               "a header of 200 KB")
     a_problem(raw(port, b"GET /" + b"a" * 60_000 + b" HTTP/1.1\r\nHost: x\r\n\r\n"), (400, 414, 431), "a path of 60 KB")

@@ -74,6 +74,36 @@ TEST(HealthText, FitsEightyColumnsAndCarriesTheCautions) {
     EXPECT_THAT(text, testing::HasSubstr("**  plan"));
 }
 
+TEST(HealthText, TellsTheNewestEventsAndMakesThemPrintable) {
+    SectionHealth health = worn_section("A");
+    health.events.assign(7, {analytics::Instant{} + std::chrono::hours(24), "note", "", "fitter", "strainer\033[2J cleaned"});
+    const std::string text = health_text(health, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("  1970-01-02  note, by fitter: strainer?[2J cleaned\n"));
+    EXPECT_THAT(text, testing::Not(testing::HasSubstr("\033")));
+    EXPECT_EQ(to_json(health)["events"].size(), 7U);
+}
+
+TEST(AlertsText, SaysWhoAcknowledgedAndWhy) {
+    Episode episode;
+    episode.pump = "press-2";
+    episode.acknowledged_by = "fitter";
+    episode.why = "part ordered";
+    EXPECT_THAT(alerts_text({episode}, config::Plant{}, Paper{}), testing::HasSubstr("acknowledged by fitter: part ordered\n"));
+}
+
+TEST(HistoryText, PutsDaysWithoutAVerdictIntoOneLine) {
+    HistoryRow still;
+    still.section = "A";
+    still.stood_still = true;
+    HistoryRow judged = still;
+    judged.stood_still = false;
+    judged.level = Level::sound;
+    const std::string text = history_text({still, still, still, judged, still}, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("... 3 days without a verdict\n"));
+    EXPECT_THAT(text, testing::HasSubstr("sound"));
+    EXPECT_THAT(text, testing::HasSubstr("... 1 day without a verdict\n"));
+}
+
 TEST(FleetText, FitsEightyColumns) {
     std::istringstream lines(fleet_text({worn_section("A")}, config::Plant{}, Paper{}));
     for (std::string line; std::getline(lines, line);) EXPECT_LE(line.size(), page_width) << line;
