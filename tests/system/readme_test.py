@@ -75,7 +75,7 @@ def subcommands(site):
     for name in listed:
         done = subprocess.run([site.programs / "slipledger", name, "--help"], capture_output=True, text=True, check=False)
         want(done.returncode == 0, f"slipledger {name} is listed in README.md and not known")
-        want(max(len(line) for line in done.stdout.splitlines()) <= 120, f"slipledger {name} --help is wider than a page")
+        want(max(len(line) for line in done.stdout.splitlines()) <= 80, f"slipledger {name} --help is wider than a page")
     say(f"subcommands known: {', '.join(listed)}")
 
 
@@ -92,9 +92,30 @@ def examples(site):
 
 def acts(site):
     """Acts by the command, while the daemon runs."""
-    site.command("note", "press-2", "--by", "reader", "--text", "strainer cleaned")
+    site.command("note", "press-2", "--by", "reader", "--text", "strainer\x1b[2J cleaned")
+    for wrong in (("note", "press-2", "--by", " ", "--text", "x"), ("note", "press-2", "--by", "reader", "--text", ""),
+                  ("health", "press-2", "--section", "B"),
+                  ("replaced", "press-2", "--by", "reader", "--at", "2190-01-01"),
+                  ("replaced", "press-2", "--by", "reader", "--displacement", "7100"),
+                  ("replaced", "press-2", "--by", "reader", "--displacement", "-71", "--displacement-is-right")):
+        site.command(*wrong, ends=(2,))
+    want(site.command_done("export", "--from", "soon").stdout == b"", "export prints before its options are checked")
+    hint = site.command_done("export", "--from", "soon").stderr.decode()
+    for time in re.findall(r"2026-03-01[\dT:Z]*", hint) + ["2026-03-01 06:00", "2026-03-01T07:00+01:00"]:
+        site.command("export", "--from", time)
+    want(hint.count("2026-03-01") == 3, f"the hint has other examples: {hint}")
     site.command("replaced", "press-2", "--section", "A", "--at", "2026-03-01T07:00:00Z", "--by", "reader",
                  "--displacement", "71")
+    events = site.json_of("health", "press-2")["events"]
+    want([event["kind"] for event in events] == ["replaced", "note"], f"health tells the events {events}")
+    want(events[1]["text"] == "strainer?[2J cleaned", f"the note is kept as {events[1]}")
+    for text, name in (("", "empty.csv"), ("time,pump,outlet_pressure\n2026-03-01T06:00:00Z,press-9,180\n", "foul.csv")):
+        (site.folder / name).write_text(text, encoding="utf-8")
+        want(b"nothing taken" in site.command("load", site.folder / name, ends=(1,)), f"load of {name} does not say so")
+    with open("/dev/full", "w", encoding="utf-8") as full:
+        done = subprocess.run([site.programs / "slipledger", "fleet", "--plant", site.plant_file], stdout=full,
+                              stderr=subprocess.DEVNULL, check=False)
+    want(done.returncode == 3, f"fleet on a full disk ends with {done.returncode}; wanted 3")
     site.command("backup", site.folder / "copy.db")
     want((site.folder / "copy.db").stat().st_size > 0, "the backup is empty")
     for question in (("fleet",), ("health", "press-2"), ("history", "press-2"), ("alerts",), ("status",)):
