@@ -97,7 +97,7 @@ const Place* Mapping::place_of(ledger::PointId point, const ValueRanges& ranges)
 void Mapping::add_pumps(const ledger::Directory& directory, std::span<const config::Pump> pumps) {
     for (const auto& [names, point] : directory.points) {
         const auto& [pump_name, section] = names;
-        const auto pump = std::find_if(pumps.begin(), pumps.end(), [&](const auto& one) { return one.id == pump_name; });
+        const auto pump = std::find_if(pumps.begin(), pumps.end(), [&wanted = names.first](const auto& one) { return one.id == wanted; });
         const Place* place = place_of(point, ranges_at(pump == pumps.end() ? nullptr : &*pump, section));
         PumpPlaces& places = pumps_[pump_name];
         if (section.empty()) places.pump = place;

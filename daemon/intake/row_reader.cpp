@@ -100,7 +100,7 @@ void RowReader::read_csv(std::string_view line) {
 }
 
 void RowReader::read_header(std::span<const std::string_view> names) {
-    columns_.emplace();
+    columns_ = Columns{};
     columns_->count = names.size();
     std::set<std::string_view> seen;
     for (std::size_t i = 0; i < names.size(); ++i) {

@@ -79,7 +79,7 @@ net::awaitable<PostOutcome> read_answer(boost::beast::tcp_stream& stream) {
     co_await http::async_read(stream, buffer, parser, as_values);
     body.resize(body.size() - parser.get().body().size);
     PostOutcome outcome;
-    outcome.status = parser.get().result_int();
+    outcome.status = static_cast<int>(parser.get().result_int());
     outcome.text = body.substr(0, longest_quote);
     co_return outcome;
 }

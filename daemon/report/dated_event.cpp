@@ -3,7 +3,6 @@
 #include <fmt/format.h>
 
 #include <nlohmann/json.hpp>
-#include <ranges>
 
 namespace slipledger::report {
 
@@ -26,7 +25,8 @@ std::string text_of(const ledger::Event& event) {
 
 std::vector<DatedEvent> dated_events(std::span<const ledger::Event> events, std::string_view section, std::size_t most) {
     std::vector<DatedEvent> out;
-    for (const ledger::Event& event : events | std::views::reverse) {
+    for (auto newest = events.rbegin(); newest != events.rend(); ++newest) {
+        const ledger::Event& event = *newest;
         if (out.size() == most) break;
         const bool ours = event.section.empty() || event.section == section;
         if (!ours || event.at <= analytics::Instant{}) continue;

@@ -47,8 +47,7 @@ std::vector<Instant> cuts_of(std::span<const Life> lives, std::span<const Event>
         if (!same_facts(pump_at(today, facts, facts[i - 1].at), pump_at(today, facts, facts[i].at), section))
             cuts.push_back(facts[i].at);
     std::ranges::sort(cuts);
-    const auto rest = std::ranges::unique(cuts);
-    cuts.erase(rest.begin(), rest.end());
+    cuts.erase(std::unique(cuts.begin(), cuts.end()), cuts.end());
     return cuts;
 }
 
