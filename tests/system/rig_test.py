@@ -3,8 +3,8 @@
 them in order: near 1 at grade 0, more at grade 1, most at grade 2.
 
 Outside values: the grades set by the people who ran the rig (data set "Condition monitoring of hydraulic
-systems", UCI Machine Learning Repository no. 447, CC BY 4.0), and the bands of the issue this project was built
-to.
+systems", UCI Machine Learning Repository no. 447, CC BY 4.0). The bands are wide enough for the convention
+that splits flow into theory and leakage.
 
    rig_test.py FOLDER_OF_PROGRAMS"""
 import csv
