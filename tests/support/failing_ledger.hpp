@@ -9,6 +9,9 @@
 namespace slipledger::testing {
 
 enum class FailsWhen { before_storing, after_storing };
+// The writer looks for closed hours of its own accord, sooner or later than the first batch comes: a test that wants a certain
+// batch to fail counts storing alone.
+enum class Counts { every_call, storing };
 
 // Threads: one at a time, like the ledger it wraps.
 class FailingLedger final : public ledger::Ledger {
@@ -23,8 +26,8 @@ class FailingLedger final : public ledger::Ledger {
 
 public:
     // `at` counts from 1; later calls go through again.
-    FailingLedger(std::unique_ptr<ledger::Ledger> real, int at, FailsWhen when)
-        : real_(std::move(real)), at_(at), when_(when) {}
+    FailingLedger(std::unique_ptr<ledger::Ledger> real, int at, FailsWhen when, Counts counts = Counts::every_call)
+        : real_(std::move(real)), at_(at), when_(when), counts_(counts) {}
 
     int calls() const { return calls_; }
 
@@ -33,6 +36,7 @@ public:
         return counted([&] { return real_->store(batches); });
     }
     bool close_hours() override {
+        if (counts_ == Counts::storing) return real_->close_hours();
         return counted([&] { return real_->close_hours(); });
     }
     bool store(const ledger::AnalysisResult& result) override {
@@ -55,6 +59,7 @@ private:
     std::unique_ptr<ledger::Ledger> real_;
     int at_;
     FailsWhen when_;
+    Counts counts_;
     int calls_ = 0;
 };
 

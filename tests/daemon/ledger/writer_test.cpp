@@ -102,7 +102,8 @@ TEST_F(Writing, RefusesABatchWhenTheQueueIsFullAndLeavesItUntouched) {
 }
 
 TEST_F(Writing, SaysThatACommitFailedAndLivesOn) {
-    Writer writer(std::make_unique<testing::FailingLedger>(open_ledger(plant_), 1, testing::FailsWhen::before_storing),
+    Writer writer(std::make_unique<testing::FailingLedger>(open_ledger(plant_), 1, testing::FailsWhen::before_storing,
+                                                           testing::Counts::storing),
                   1ms);
     const IntakeOutcome failed = submit_and_wait(writer, batch(writer.directory(), 0));
     EXPECT_TRUE(failed.failed);
