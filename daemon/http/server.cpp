@@ -152,8 +152,6 @@ HttpServer::~HttpServer() { reader_->pool.join(); }
 
 std::uint16_t HttpServer::port() const { return acceptor_.is_open() ? acceptor_.local_endpoint().port() : std::uint16_t{0}; }
 
-void HttpServer::reload(std::shared_ptr<const config::Plant> plant) { reader_->plant = std::move(plant); }
-
 void HttpServer::stop() {
     boost::system::error_code ignored;
     acceptor_.close(ignored);

@@ -26,9 +26,6 @@ public:
     // The port listened on; 0: none.
     std::uint16_t port() const;
 
-    // Answers by the new plant file from here on.
-    void reload(std::shared_ptr<const config::Plant> plant);
-
     // Takes no new connections and ends those that wait for a request.
     void stop();
 
