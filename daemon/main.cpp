@@ -107,6 +107,7 @@ int run(int argc, char** argv) {
     CLI::App app{
         "The Slipledger service: takes readings, judges pumps, tells whom it may concern.\n"
         "Decision support, not a safety function."};
+    app.name("slipledgerd");
     std::string plant_file = "/etc/slipledger/plant.json";
     app.add_option("--plant", plant_file, "plant file")->envname("SLIPLEDGER_PLANT")->type_name("FILE")->capture_default_str();
     try {

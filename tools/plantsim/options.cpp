@@ -65,6 +65,7 @@ void add_load_options(CLI::App& app, Options& options) {
 
 Options parse_options(int argc, char** argv) {
     CLI::App app{"plantsim: a year of an invented veneer mill's pumps, as their loggers would have written it"};
+    app.name("plantsim");
     Options options;
     add_mill_options(app, options);
     add_load_options(app, options);

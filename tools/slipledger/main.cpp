@@ -73,6 +73,7 @@ int main(int argc, char** argv) try {
         "Keeps a ledger of every pump's slip and says which to watch, plan for or act on.\n"
         "Decision support, not a safety function: follow the maker's manual, site rules\n"
         "and local codes first."};
+    app.name("slipledger");  // not its path: usage lines stay within a page wherever it is installed
     app.require_subcommand(1);
     app.formatter(std::make_shared<Help>());
     app.set_version_flag("--version", "slipledger " SLIPLEDGER_VERSION);
