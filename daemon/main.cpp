@@ -23,6 +23,7 @@
 #include "daemon/signals.hpp"
 #include "daemon/silence_round.hpp"
 #include "daemon/status.hpp"
+#include "daemon/timed_ledger.hpp"
 #include "daemon/watch/analyst.hpp"
 #include "daemon/watch/plant_changes.hpp"
 
@@ -48,7 +49,8 @@ intake::FindReceipt receipts_of(std::string ledger_path) {
 SharedPlant serve(const SharedPlant& plant, const std::string& plant_file) {
     const std::string& ledger_path = plant->store.path;
     const SystemClock clock;
-    ledger::Writer writer(ledger::open_ledger(*plant), plant->store.commit_interval);
+    CommitTimes commits;
+    ledger::Writer writer(std::make_unique<TimedLedger>(ledger::open_ledger(*plant), commits), plant->store.commit_interval);
     watch::store_plant_changes(*plant, writer, clock);
     watch::Analyst analyst(*plant, writer, ledger_path);
 
@@ -57,7 +59,7 @@ SharedPlant serve(const SharedPlant& plant, const std::string& plant_file) {
     intake::Intake intake(network, plant->feeds, plant->pumps, writer, clock, receipts_of(ledger_path));
     http::HttpServer http(network, plant);
     const intake::CommandWorld world{plant->feeds, plant->pumps, plant->time_zone, writer, clock, receipts_of(ledger_path),
-                                     [&] { return status_json(intake.status(), ledger_path, http.port()); },
+                                     [&] { return status_json(intake.status(), commits.longest(), ledger_path, http.port()); },
                                      [&] { return analyst.wait_until_judged(judged_wait); }};
     intake::CommandSocket commands(network, intake::command_socket_path(ledger_path), world);
     SilenceRound silence(network, *plant, intake, writer, clock);

@@ -29,11 +29,12 @@ ordered_json feed_json(const intake::FeedStatus& feed) {
 
 }  // namespace
 
-std::string status_json(const std::vector<intake::FeedStatus>& feeds, const std::string& ledger_path,
-                        std::uint16_t http_port) {
+std::string status_json(const std::vector<intake::FeedStatus>& feeds, const CommitTimes::Longest& commits,
+                        const std::string& ledger_path, std::uint16_t http_port) {
     const ledger::Reader reader(ledger_path);
     ordered_json out{{"feeds", ordered_json::array()},
                      {"marks", reader.marks().size()},
+                     {"longest_commit_ms", {{"last_minute", commits.of_last_minute_ms}, {"since_start", commits.since_start_ms}}},
                      {"deliveries", ordered_json::array()},
                      {"http_port", http_port}};
     for (const intake::FeedStatus& feed : feeds) out["feeds"].push_back(feed_json(feed));

@@ -6,11 +6,12 @@
 #include <vector>
 
 #include "daemon/intake/feed_counters.hpp"
+#include "daemon/timed_ledger.hpp"
 
 namespace slipledger {
 
 // One JSON object without line breaks. Asks the ledger, so not on the network thread.
-std::string status_json(const std::vector<intake::FeedStatus>& feeds, const std::string& ledger_path,
-                        std::uint16_t http_port);
+std::string status_json(const std::vector<intake::FeedStatus>& feeds, const CommitTimes::Longest& commits,
+                        const std::string& ledger_path, std::uint16_t http_port);
 
 }  // namespace slipledger

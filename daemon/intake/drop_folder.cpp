@@ -108,7 +108,8 @@ FolderListing DropFolder::listing() const {
     for (fs::directory_iterator entry(folder_, error), end; !error && entry != end; entry.increment(error)) {
         const std::string name = entry->path().filename();
         struct stat facts {};
-        if (!is_candidate(name) || ::stat(entry->path().c_str(), &facts) != 0 || !S_ISREG(facts.st_mode)) continue;
+        // Not through links: whoever may write into the folder need not be one who may read what a link points at.
+        if (!is_candidate(name) || ::lstat(entry->path().c_str(), &facts) != 0 || !S_ISREG(facts.st_mode)) continue;
         SeenFile file;
         file.size = static_cast<std::uint64_t>(facts.st_size);
         file.changed_ns = facts.st_mtim.tv_sec * 1'000'000'000 + facts.st_mtim.tv_nsec;

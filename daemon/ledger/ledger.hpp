@@ -3,6 +3,7 @@
 // call returns, or an exception says that nothing is.
 #pragma once
 
+#include <memory>
 #include <span>
 #include <stdexcept>
 #include <string>
@@ -18,6 +19,16 @@ namespace slipledger::ledger {
 class LedgerFailure : public std::runtime_error {
 public:
     using std::runtime_error::runtime_error;
+};
+
+// A copy of the ledger in the making, a few pages at a time, so that commits go in between; what they change is copied too.
+// Destroyed before it is whole, nothing of it is left.
+// Threads: as the ledger it came from.
+class Copying {
+public:
+    virtual ~Copying() = default;
+    // False: the copy is whole. Throws LedgerFailure.
+    virtual bool step() = 0;
 };
 
 // Threads: one at a time (the writer's, once it runs).
@@ -45,8 +56,8 @@ public:
 
     virtual void store(std::span<const DeliveryUpdate> updates) = 0;
 
-    // A consistent copy. Nothing else is stored meanwhile; readers go on.
-    virtual void backup(const std::string& path) = 0;
+    // Begins a consistent copy in a file that does not exist yet. The ledger must outlive it.
+    virtual std::unique_ptr<Copying> begin_backup(const std::string& path) = 0;
 };
 
 }  // namespace slipledger::ledger

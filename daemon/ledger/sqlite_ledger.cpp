@@ -5,6 +5,7 @@
 
 #include <algorithm>
 #include <array>
+#include <filesystem>
 
 #include "daemon/ledger/open_ledger.hpp"
 #include "daemon/ledger/registry.hpp"
@@ -13,7 +14,7 @@
 namespace slipledger::ledger {
 namespace {
 
-constexpr int pages_a_backup_step = 256;
+constexpr int pages_a_backup_step = 256;  // a megabyte: some milliseconds
 
 // Acts on alarms and remarks; every other event may change what is judged.
 constexpr std::array<std::string_view, 7> events_that_judge_nothing{
@@ -47,6 +48,38 @@ std::vector<const Row*> all_rows(std::span<const IntakeBatch> batches) {
     return rows;
 }
 
+// On the writer's own connection: from a second one a backup begins anew at every commit.
+class SqliteCopying final : public Copying {
+public:
+    SqliteCopying(const std::string& path, SQLite::Database& from)
+        : path_(path), copy_(std::in_place, path, SQLite::OPEN_READWRITE | SQLite::OPEN_CREATE), copying_(std::in_place, *copy_, from) {}
+    SqliteCopying(const SqliteCopying&) = delete;
+    SqliteCopying& operator=(const SqliteCopying&) = delete;
+    ~SqliteCopying() override {
+        copying_.reset();
+        copy_.reset();
+        std::error_code ignored;
+        if (!whole_) std::filesystem::remove(path_, ignored);
+    }
+
+    bool step() override try {
+        whole_ = copying_->executeStep(pages_a_backup_step) == SQLITE_DONE;
+        return !whole_;
+    } catch (const SQLite::Exception& fault) {
+        throw failed(path_, fault);
+    }
+
+    static LedgerFailure failed(const std::string& path, const SQLite::Exception& fault) {
+        return LedgerFailure("cannot back up to " + path + ": " + fault.what());
+    }
+
+private:
+    std::string path_;
+    std::optional<SQLite::Database> copy_;
+    std::optional<SQLite::Backup> copying_;  // before the file it writes to
+    bool whole_ = false;
+};
+
 IntakeOutcome outcome_of(const IntakeBatch& batch, std::span<const Change> changes) {
     IntakeOutcome outcome;
     outcome.added.assign(batch.sources, 0);
@@ -73,7 +106,9 @@ SqliteLedger::SqliteLedger(const config::Plant& plant)
                "INSERT INTO refused (feed, place, code, message, text, received) VALUES (?, ?, ?, ?, ?, ?)"),
       receipt_(database_,
                "INSERT INTO receipt (sha256, feed, file, rows, stored, repeated, refused, taken) "
-               "VALUES (?, ?, ?, ?, ?, ?, ?, ?) ON CONFLICT DO NOTHING"),
+               "VALUES (?, ?, ?, ?, ?, ?, ?, ?) ON CONFLICT DO UPDATE SET (feed, file, rows, stored, repeated, refused, taken) = "
+               "(excluded.feed, excluded.file, excluded.rows, excluded.stored, excluded.repeated, excluded.refused, "
+               "excluded.taken) WHERE stored + repeated = 0"),  // refused whole before, and taken now
       event_(database_,
              "INSERT INTO dated_event (pump, section, kind, at, entered, \"by\", user, body) "
              "VALUES (?, ?, ?, ?, ?, ?, ?, ?)") {}
@@ -181,14 +216,10 @@ void SqliteLedger::store(std::span<const DeliveryUpdate> updates) {
     });
 }
 
-// On the writer's own connection: from a second one a backup begins anew at every commit.
-void SqliteLedger::backup(const std::string& path) try {
-    SQLite::Database copy(path, SQLite::OPEN_READWRITE | SQLite::OPEN_CREATE);
-    SQLite::Backup copying(copy, database_);
-    while (copying.executeStep(pages_a_backup_step) != SQLITE_DONE) {
-    }
+std::unique_ptr<Copying> SqliteLedger::begin_backup(const std::string& path) try {
+    return std::make_unique<SqliteCopying>(path, database_);
 } catch (const SQLite::Exception& fault) {
-    throw LedgerFailure("cannot back up to " + path + ": " + fault.what());
+    throw SqliteCopying::failed(path, fault);
 }
 
 }  // namespace slipledger::ledger

@@ -263,7 +263,19 @@ void Writer::store(std::vector<DeliveryUpdate> updates) {
 }
 
 void Writer::backup(const std::string& path) {
-    inside_->wait_for([&](Ledger& ledger) { ledger.backup(path); });
+    std::unique_ptr<Copying> copying = inside_->wait_for([&](Ledger& ledger) { return ledger.begin_backup(path); });
+    const auto step = [&](Ledger&) {
+        try {
+            if (copying->step()) return true;
+        } catch (...) {
+            copying.reset();  // here, since it belongs to this thread
+            throw;
+        }
+        copying.reset();
+        return false;
+    };
+    while (inside_->wait_for(step)) {
+    }
 }
 
 void Writer::on_marks(std::function<void()> wake) {

@@ -32,7 +32,8 @@ public:
     std::int64_t store(const Event& event);             // waits
     void store(std::vector<Notice> notices);            // waits
     void store(std::vector<DeliveryUpdate> updates);    // waits
-    void backup(const std::string& path);               // waits
+    // Waits; commits go on meanwhile. The file must not exist yet.
+    void backup(const std::string& path);
 
     // Called on the writer's thread after a commit that raised or changed marks / put rows into the outbox.
     void on_marks(std::function<void()> wake);

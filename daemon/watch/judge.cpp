@@ -86,7 +86,7 @@ private:
         const std::int32_t never = pass_.last_date + 1;
         const std::int32_t began = std::min(drain.began.value_or(never), delivery.began.value_or(never));
         if (began <= pass_.first_date) return;
-        std::vector<ledger::DayRecord> before = reader_.days(drain.result.track, pass_.first_date - 1, pass_.last_date);
+        std::vector<ledger::DayRecord> before = reader_.days(drain.result.track, pass_.first_date - 1, pass_.last_date + 1);
         bool shared = false;
         std::vector<ledger::DayRecord> rows;
         for (std::int32_t date = pass_.first_date; date < began; ++date) {

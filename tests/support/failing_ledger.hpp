@@ -51,8 +51,8 @@ public:
     void store(std::span<const ledger::DeliveryUpdate> updates) override {
         counted([&] { return real_->store(updates), true; });
     }
-    void backup(const std::string& path) override {
-        counted([&] { return real_->backup(path), true; });
+    std::unique_ptr<ledger::Copying> begin_backup(const std::string& path) override {
+        return counted([&] { return real_->begin_backup(path); });
     }
 
 private:

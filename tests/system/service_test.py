@@ -76,6 +76,8 @@ def reopens_the_alert_log(programs, folder):
     connection.send(lines(row(n) for n in range(200, 400)))
     until(lambda: log.read_text().count("\n"), 20, "the oil's cooling is in the new alert log")
     want((folder / "alerts.1").read_text() == before, "the old alert log was written to after SIGUSR1")
+    longest = site.json_of("status")["longest_commit_ms"]
+    want(0 < longest["last_minute"] <= longest["since_start"] < 60_000, f"status tells of a longest commit of {longest} ms")
     say(f"SIGUSR1: {before.count(chr(10))} notices in the old log, the next in a new one")
     site.stop()
 

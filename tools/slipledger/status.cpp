@@ -21,6 +21,9 @@ void print_status(const nlohmann::json& status) {
                    feed.value("stored", 0ULL), feed.value("repeated", 0ULL), feed.value("refused", 0ULL),
                    feed.value("connections", 0ULL), text_of(feed.at("last_reading")));
     fmt::print("pumps waiting to be judged: {}\n", status.value("marks", 0));
+    const auto& longest = status.at("longest_commit_ms");
+    fmt::print("longest commit: {:.0f} ms in the last minute, {:.0f} ms since the start\n", longest.value("last_minute", 0.0),
+               longest.value("since_start", 0.0));
     for (const auto& target : status.at("deliveries"))
         fmt::print("notices for {}: {} waiting, {} failed\n", target.value("target", ""), target.value("pending", 0),
                    target.value("failed", 0));

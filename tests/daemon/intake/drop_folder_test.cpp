@@ -128,6 +128,9 @@ TEST_F(Drop, FolderTakesWhatIsThereAndWhatComesAndStops) {
     plant_.feeds[1].stable_for = 1s;
     put("a.csv", csv_rows(5));
     put("b.csv.part", csv_rows(6));
+    fs::create_directories(folder_.path() / "elsewhere");
+    std::ofstream(folder_.path() / "elsewhere/secret.csv") << csv_rows(7);
+    fs::create_symlink(folder_.path() / "elsewhere/secret.csv", drop_ / "link.csv");
     const Mapping mapping(plant_.feeds[1], writer().directory(), plant_.pumps);
     const LoadWorld world{mapping, writer(), clock_, find_receipt(), nullptr, {}, false};
     FeedCounters counters;
@@ -146,6 +149,7 @@ TEST_F(Drop, FolderTakesWhatIsThereAndWhatComesAndStops) {
         return fs::exists(drop_ / "taken/b.csv");
     }));
     EXPECT_TRUE(soon([&] { return counters.stored == 6; }));
+    EXPECT_TRUE(fs::is_symlink(drop_ / "link.csv")) << "what a link points at is none of the folder's";
     net::post(io, [&] { folder.stop(); });
     network.join();
     EXPECT_TRUE(folder.idle());

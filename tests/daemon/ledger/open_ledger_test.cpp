@@ -103,9 +103,34 @@ TEST_F(OpenLedger, KeepsEveryNumberWhenThePlantFileChanges) {
 
 TEST_F(OpenLedger, BacksUpToACopyThatCanBeRead) {
     store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 180.0}})});
-    ledger().backup(folder_ / "copy.db");
+    const auto copying = ledger().begin_backup(folder_ / "copy.db");
+    while (copying->step()) {
+    }
     EXPECT_EQ(Reader(folder_ / "copy.db").count(point("press-1")).readings, 1U);
-    EXPECT_THAT(failure_of([&] { ledger().backup(folder_ / "no/folder/copy.db"); }), HasSubstr("no/folder"));
+    EXPECT_THAT(failure_of([&] { ledger().begin_backup(folder_ / "no/folder/copy.db"); }), HasSubstr("no/folder"));
+}
+
+TEST_F(OpenLedger, BacksUpWhatIsStoredBetweenTwoStepsToo) {
+    for (int hour = 0; hour < 400; ++hour) {  // a few megabytes: several steps
+        std::vector<Row> rows;
+        for (int second = 0; second < 600; ++second)
+            rows.push_back(row_of(point("press-1"), day_one + std::chrono::hours(hour) + std::chrono::seconds(6 * second),
+                                  {{Quantity::outlet_pressure, 180.0 + 0.37 * ((second * 7919 + hour * 104729) % 9973)}}));
+        store(rows);
+    }
+    const auto copying = ledger().begin_backup(folder_ / "copy.db");
+    ASSERT_TRUE(copying->step()) << "the copy was whole after one step: nothing can come between";
+    store({row_of(point("press-1"), day_one + std::chrono::hours(500), {{Quantity::outlet_pressure, 181.0}})});
+    int steps = 1;
+    while (copying->step()) ++steps;
+    EXPECT_LT(steps, 100) << "a commit in between must not begin the copy anew";
+    EXPECT_EQ(Reader(folder_ / "copy.db").count(point("press-1")).readings, 400U * 600U + 1U);
+}
+
+TEST_F(OpenLedger, LeavesNothingOfABackupThatWasGivenUp) {
+    store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 180.0}})});
+    static_cast<void>(ledger().begin_backup(folder_ / "copy.db"));
+    EXPECT_FALSE(std::filesystem::exists(folder_ / "copy.db"));
 }
 
 TEST_F(OpenLedger, ShowsViewsWithPlainNames) {

@@ -109,5 +109,18 @@ TEST_F(Outbox, KeepsAReceiptWithTheCountsOfItsLastBatchAdded) {
     EXPECT_FALSE(reader().receipt("cd34"));
 }
 
+TEST_F(Outbox, TellsOfAFileTakenAfterItWasRefusedWholeThatItWasTaken) {
+    IntakeBatch refused;
+    refused.receipt = Receipt{.feed = FeedId{1}, .file = "old-name.csv", .sha256 = "ab12", .rows = 1, .refused = 1, .taken = day_one};
+    ledger().store(std::vector{refused});
+    IntakeBatch taken = batch_of({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 180.0}})});
+    taken.receipt = Receipt{.feed = FeedId{1}, .file = "mended.csv", .sha256 = "ab12", .rows = 1, .taken = day_one};
+    ledger().store(std::vector{taken});
+    EXPECT_EQ(reader().receipt("ab12")->file, "mended.csv");
+    EXPECT_EQ(reader().receipt("ab12")->stored, 1U);
+    ledger().store(std::vector{refused});
+    EXPECT_EQ(reader().receipt("ab12")->file, "mended.csv") << "what was taken stays told";
+}
+
 }  // namespace
 }  // namespace slipledger::ledger
