@@ -46,7 +46,7 @@ public:
     std::int64_t store(const ledger::Event& event) override;
     void store(std::span<const ledger::Notice> notices) override;
     void store(std::span<const ledger::DeliveryUpdate> updates) override;
-    std::unique_ptr<ledger::Copying> begin_backup(const std::string& path) override {
+    ledger::CopyStep begin_backup(const std::string& path) override {
         return real_->begin_backup(path);
     }
 

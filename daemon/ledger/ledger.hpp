@@ -3,7 +3,7 @@
 // call returns, or an exception says that nothing is.
 #pragma once
 
-#include <memory>
+#include <functional>
 #include <span>
 #include <stdexcept>
 #include <string>
@@ -21,15 +21,8 @@ public:
     using std::runtime_error::runtime_error;
 };
 
-// A copy of the ledger in the making, a few pages at a time, so that commits go in between; what they change is copied too.
-// Destroyed before it is whole, nothing of it is left.
-// Threads: as the ledger it came from.
-class Copying {
-public:
-    virtual ~Copying() = default;
-    // False: the copy is whole. Throws LedgerFailure.
-    virtual bool step() = 0;
-};
+// Copies a few pages more; false: the copy is whole. Throws LedgerFailure. Destroyed before that, nothing of the copy is left.
+using CopyStep = std::function<bool()>;
 
 // Threads: one at a time (the writer's, once it runs).
 class Ledger {
@@ -56,8 +49,9 @@ public:
 
     virtual void store(std::span<const DeliveryUpdate> updates) = 0;
 
-    // Begins a consistent copy in a file that does not exist yet. The ledger must outlive it.
-    virtual std::unique_ptr<Copying> begin_backup(const std::string& path) = 0;
+    // Begins a consistent copy in a file that does not exist yet. Commits may go in between two steps; what they change is
+    // copied too. The ledger must outlive what is returned.
+    virtual CopyStep begin_backup(const std::string& path) = 0;
 };
 
 }  // namespace slipledger::ledger

@@ -49,20 +49,21 @@ std::vector<const Row*> all_rows(std::span<const IntakeBatch> batches) {
 }
 
 // On the writer's own connection: from a second one a backup begins anew at every commit.
-class SqliteCopying final : public Copying {
+// Threads: as the ledger it copies.
+class SqliteCopying {
 public:
     SqliteCopying(const std::string& path, SQLite::Database& from)
         : path_(path), copy_(std::in_place, path, SQLite::OPEN_READWRITE | SQLite::OPEN_CREATE), copying_(std::in_place, *copy_, from) {}
     SqliteCopying(const SqliteCopying&) = delete;
     SqliteCopying& operator=(const SqliteCopying&) = delete;
-    ~SqliteCopying() override {
+    ~SqliteCopying() {
         copying_.reset();
         copy_.reset();
         std::error_code ignored;
         if (!whole_) std::filesystem::remove(path_, ignored);
     }
 
-    bool step() override try {
+    bool step() try {
         whole_ = copying_->executeStep(pages_a_backup_step) == SQLITE_DONE;
         return !whole_;
     } catch (const SQLite::Exception& fault) {
@@ -216,8 +217,8 @@ void SqliteLedger::store(std::span<const DeliveryUpdate> updates) {
     });
 }
 
-std::unique_ptr<Copying> SqliteLedger::begin_backup(const std::string& path) try {
-    return std::make_unique<SqliteCopying>(path, database_);
+CopyStep SqliteLedger::begin_backup(const std::string& path) try {
+    return [copying = std::make_shared<SqliteCopying>(path, database_)] { return copying->step(); };
 } catch (const SQLite::Exception& fault) {
     throw SqliteCopying::failed(path, fault);
 }

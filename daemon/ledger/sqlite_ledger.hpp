@@ -30,7 +30,7 @@ public:
     std::int64_t store(const Event& event) override;
     void store(std::span<const Notice> notices) override;
     void store(std::span<const DeliveryUpdate> updates) override;
-    std::unique_ptr<Copying> begin_backup(const std::string& path) override;
+    CopyStep begin_backup(const std::string& path) override;
 
 private:
     // Runs `work` in one transaction; on any failure rolls back, forgets what memory held of it and throws LedgerFailure.

@@ -263,15 +263,15 @@ void Writer::store(std::vector<DeliveryUpdate> updates) {
 }
 
 void Writer::backup(const std::string& path) {
-    std::unique_ptr<Copying> copying = inside_->wait_for([&](Ledger& ledger) { return ledger.begin_backup(path); });
+    CopyStep copy_more = inside_->wait_for([&](Ledger& ledger) { return ledger.begin_backup(path); });
     const auto step = [&](Ledger&) {
         try {
-            if (copying->step()) return true;
+            if (copy_more()) return true;
         } catch (...) {
-            copying.reset();  // here, since it belongs to this thread
+            copy_more = nullptr;  // here, since it belongs to this thread
             throw;
         }
-        copying.reset();
+        copy_more = nullptr;
         return false;
     };
     while (inside_->wait_for(step)) {

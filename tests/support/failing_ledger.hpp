@@ -51,7 +51,7 @@ public:
     void store(std::span<const ledger::DeliveryUpdate> updates) override {
         counted([&] { return real_->store(updates), true; });
     }
-    std::unique_ptr<ledger::Copying> begin_backup(const std::string& path) override {
+    ledger::CopyStep begin_backup(const std::string& path) override {
         return counted([&] { return real_->begin_backup(path); });
     }
 

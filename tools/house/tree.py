@@ -16,7 +16,7 @@ class Tree:
 
     def __init__(self, root):
         self.root = Path(root)
-        files = [path for path in self.root.iterdir() if path.is_file()]
+        files = [path for path in self.root.iterdir() if path.is_file() and path.name != ".git"]
         for folder in FOLDERS:
             files += [path for path in (self.root / folder).rglob("*") if path.is_file()]
         self.paths = sorted(path.relative_to(self.root).as_posix() for path in files

@@ -27,7 +27,7 @@ public:
     std::int64_t store(const ledger::Event& event) override { return real_->store(event); }
     void store(std::span<const ledger::Notice> notices) override { real_->store(notices); }
     void store(std::span<const ledger::DeliveryUpdate> updates) override { real_->store(updates); }
-    std::unique_ptr<ledger::Copying> begin_backup(const std::string& path) override { return real_->begin_backup(path); }
+    ledger::CopyStep begin_backup(const std::string& path) override { return real_->begin_backup(path); }
 
 private:
     std::unique_ptr<ledger::Ledger> real_;

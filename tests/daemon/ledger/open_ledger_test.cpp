@@ -103,8 +103,8 @@ TEST_F(OpenLedger, KeepsEveryNumberWhenThePlantFileChanges) {
 
 TEST_F(OpenLedger, BacksUpToACopyThatCanBeRead) {
     store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 180.0}})});
-    const auto copying = ledger().begin_backup(folder_ / "copy.db");
-    while (copying->step()) {
+    const CopyStep copy_more = ledger().begin_backup(folder_ / "copy.db");
+    while (copy_more()) {
     }
     EXPECT_EQ(Reader(folder_ / "copy.db").count(point("press-1")).readings, 1U);
     EXPECT_THAT(failure_of([&] { ledger().begin_backup(folder_ / "no/folder/copy.db"); }), HasSubstr("no/folder"));
@@ -118,11 +118,11 @@ TEST_F(OpenLedger, BacksUpWhatIsStoredBetweenTwoStepsToo) {
                                   {{Quantity::outlet_pressure, 180.0 + 0.37 * ((second * 7919 + hour * 104729) % 9973)}}));
         store(rows);
     }
-    const auto copying = ledger().begin_backup(folder_ / "copy.db");
-    ASSERT_TRUE(copying->step()) << "the copy was whole after one step: nothing can come between";
+    const CopyStep copy_more = ledger().begin_backup(folder_ / "copy.db");
+    ASSERT_TRUE(copy_more()) << "the copy was whole after one step: nothing can come between";
     store({row_of(point("press-1"), day_one + std::chrono::hours(500), {{Quantity::outlet_pressure, 181.0}})});
     int steps = 1;
-    while (copying->step()) ++steps;
+    while (copy_more()) ++steps;
     EXPECT_LT(steps, 100) << "a commit in between must not begin the copy anew";
     EXPECT_EQ(Reader(folder_ / "copy.db").count(point("press-1")).readings, 400U * 600U + 1U);
 }
