@@ -5,15 +5,12 @@
 
 #include <Eigen/Eigenvalues>
 
+#include "analytics/wear_motion.hpp"
+
 namespace slipledger::analytics {
 
 namespace {
 
-using Square = stats::StateMatrix<wear_states>;
-
-constexpr double wear_walk = 0.004;         // per running day^0.5
-constexpr double drift_walk = 0.0006;       // per running day^1.5
-constexpr double disturbance_days = 10.0;   // calendar days
 constexpr double model_error = 0.03;        // of predicted leakage: how well three terms describe a pump for an hour
 constexpr double contrast_error = 0.20;     // of a contrast: gaps bend and warm with pressure, hour after hour alike
 constexpr double least_swing = 0.03;        // of the reference features: smaller swings are mostly gauge noise
@@ -27,8 +24,7 @@ constexpr double longest_step = 0.5;     // in any logarithm, by one sighting
 constexpr double loose = 0.10;           // of predicted leakage: relinearise while less sure than this
 constexpr int relinearisations = 3;
 constexpr double speed_told_apart = 1.3;  // speed must vary by this factor before the speed term is learned
-constexpr double jump_sd = 0.35;
-constexpr double most_leakage = 1.2;  // of theoretical flow
+constexpr double most_leakage = 1.2;      // of theoretical flow
 constexpr double least_leakage = -0.2;
 
 double square(double v) {
@@ -104,17 +100,11 @@ bool WearFilter::impossible(const Summary& summary) const {
 
 void WearFilter::advance(double running_days, double calendar_days) {
     if (!primed_) return;
-    const double d = std::max(running_days, 0.0);
-    const double phi = std::exp(-std::max(calendar_days, 0.0) / disturbance_days);
-    Square motion = Square::Identity();
-    motion(ln_wear, drift) = d;
-    motion(disturbance, disturbance) = phi;
-    Square noise = Square::Zero();
-    noise(ln_wear, ln_wear) = square(wear_walk) * d + square(drift_walk) * d * d * d / 3.0;
-    noise(ln_wear, drift) = noise(drift, ln_wear) = square(drift_walk) * d * d / 2.0;
-    noise(drift, drift) = square(drift_walk) * d;
-    noise(disturbance, disturbance) = square(disturbance_spread(basis_)) * (1.0 - phi * phi);
-    stats::carry(belief_, motion, noise);
+    const WearMotion wear = wear_motion(running_days, calendar_days, basis_);
+    belief_.mean.tail<moving_states>() = wear.motion * belief_.mean.tail<moving_states>();
+    belief_.covariance.bottomRows<moving_states>() = wear.motion * belief_.covariance.bottomRows<moving_states>();
+    belief_.covariance.rightCols<moving_states>() *= wear.motion.transpose();
+    belief_.covariance.bottomRightCorner<moving_states, moving_states>() += wear.noise;
 }
 
 WearFilter::Expected WearFilter::expect(const WearVector& mean, const Moments& m, bool compensating) const {
@@ -280,7 +270,7 @@ void WearFilter::remember(const Moments& m) {
 }
 
 void WearFilter::open_wear() {
-    belief_.covariance(ln_wear, ln_wear) += square(jump_sd);
+    belief_.covariance(ln_wear, ln_wear) += jump_variance;
 }
 
 LogEstimate WearFilter::wear() const {

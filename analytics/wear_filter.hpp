@@ -62,15 +62,8 @@ public:
     // Not computed: a plausibility check.
     bool impossible(const Summary& summary) const;
 
-    // Motion of wear, drift and disturbance:
-    //
-    //   x' = x + v d,   v' = v,   u' = phi u,   phi = exp(-c / 10)
-    //
-    //   d  running_days   24 running hours   c  calendar_days
-    //
-    // with variance 0.004^2 d + 0.0006^2 d^3/3 on x, 0.0006^2 d on v, 0.0006^2 d^2/2 between them, s^2 (1 - phi^2)
-    // on u. Example: v = 0.001, 10 running days -> x grows by 0.01. Source: method.md, 5 (integrated random walk:
-    // Durbin and Koopman 2012).
+    // Time passes: wear, drift and disturbance move as in wear_motion, all else stays.
+    // Source: method.md, 5.
     void advance(double running_days, double calendar_days);
 
     // How far a summary's mean leakage is from what is expected, in standard deviations, before it is fed; of the
@@ -85,7 +78,7 @@ public:
     // Source: method.md, 5.
     void feed(const Summary& summary, bool settled);
 
-    // A jump was found: lets x go where the next summaries say (variance 0.35^2 more).
+    // A jump was found: lets x go where the next summaries say (`jump_variance` more).
     // Source: method.md, 5.
     void open_wear();
 

@@ -1,10 +1,11 @@
-// One step of a Kalman filter, for any small fixed number of states: what the wear filter is built on, and what is
-// checked against other people's software on its own (tests/reference/kalman.py). The covariance is updated in Joseph's
-// form, which stays symmetric and positive for any gain: also for one that was bounded, or in which states are only
-// considered. Header only: it is a template. Source: B. D. O. Anderson and J. B. Moore, Optimal Filtering (1979); J.
-// Durbin and S. J. Koopman, Time Series Analysis by State Space Methods (2012) (from memory).
+// One step of a Kalman filter and of its smoother, for any small fixed number of states: what the wear filter is built
+// on, and what is checked against other people's software on its own (tests/reference/kalman.py). The covariance is
+// updated in Joseph's form, which stays symmetric and positive for any gain: also for one that was bounded, or in which
+// states are only considered. Header only: it is a template. Source: B. D. O. Anderson and J. B. Moore, Optimal
+// Filtering (1979); J. Durbin and S. J. Koopman, Time Series Analysis by State Space Methods (2012) (from memory).
 #pragma once
 
+#include <Eigen/Cholesky>
 #include <Eigen/Core>
 
 namespace slipledger::analytics::stats {
@@ -71,6 +72,31 @@ void take_in(Belief<N>& belief, const Sighting<N>& seen, const StateVector<N>& g
     StateMatrix<N> both = left - left_spread * gain.transpose();
     both += (gain * seen.variance) * gain.transpose();
     belief.covariance = 0.5 * (both + both.transpose());
+}
+
+// Looks back: what later sightings say of the belief at t, once the belief at t + 1 has been smoothed.
+//
+//   G = P F' (P-)^-1,   mean^s = mean + G (mean^s' - mean-),   P^s = P + G (P^s' - P-) G'
+//
+//   mean, P     filtered    at t, after what was seen there
+//   mean-, P-   expected    at t + 1, before what was seen there: `filtered` carried on; P- must be positive
+//   mean^s', P^s'   later   at t + 1, smoothed; at the end of the series the filtered one
+//   F           motion      from t to t + 1
+//
+// Example: one state that never moves: 0 +- 1 filtered, later 0.5 +- 0.7071 -> the same 0.5 +- 0.7071 before.
+// Source: H. E. Rauch, F. Tung and C. T. Striebel, Maximum likelihood estimates of linear dynamic systems, AIAA Journal
+// 3 (1965) (from memory).
+template <int N>
+Belief<N> smooth(const Belief<N>& filtered, const StateMatrix<N>& motion, const Belief<N>& expected,
+                 const Belief<N>& later) {
+    const StateMatrix<N> moved = motion * filtered.covariance;
+    const StateMatrix<N> gain = expected.covariance.ldlt().solve(moved).transpose();
+    Belief<N> smoothed;
+    smoothed.mean = filtered.mean + gain * (later.mean - expected.mean);
+    const StateMatrix<N> both =
+        filtered.covariance + gain * (later.covariance - expected.covariance) * gain.transpose();
+    smoothed.covariance = 0.5 * (both + both.transpose());
+    return smoothed;
 }
 
 }  // namespace slipledger::analytics::stats

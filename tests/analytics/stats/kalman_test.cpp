@@ -1,5 +1,7 @@
 #include "analytics/stats/kalman.hpp"
 
+#include <vector>
+
 #include <gtest/gtest.h>
 
 #include "tests/analytics/reference_table.hpp"
@@ -37,6 +39,38 @@ TEST(KalmanStep, FollowsALocalLinearTrendAsStatsmodelsDoes) {
         expect_close(belief.covariance(0, 0), row[3]);
         expect_close(belief.covariance(0, 1), row[4]);
         expect_close(belief.covariance(1, 1), row[5]);
+    }
+}
+
+// reference: smooth - outside: statsmodels 0.13 Kalman smoother, local linear trend (kalman.py)
+TEST(KalmanSmoother, LooksBackOnALocalLinearTrendAsStatsmodelsDoes) {
+    const auto rows = reference_table("kalman_smoothed.csv");
+    StateMatrix<2> motion;
+    motion << 1.0, 1.0, 0.0, 1.0;
+    StateMatrix<2> noise = StateMatrix<2>::Zero();
+    noise.diagonal() << 0.01, 0.0004;
+    std::vector<Belief<2>> expected(1);
+    std::vector<Belief<2>> filtered;
+    expected[0].covariance.diagonal() << 100.0, 1.0;
+    for (const auto& row : rows) {
+        Belief<2> belief = expected.back();
+        Sighting<2> seen;
+        seen.design << 1.0, 0.0;
+        seen.innovation = row[0] - belief.mean(0);
+        seen.variance = 0.04;
+        take_in(belief, seen, best_gain(belief, seen));
+        filtered.push_back(belief);
+        carry(belief, motion, noise);
+        expected.push_back(belief);
+    }
+    Belief<2> smoothed = filtered.back();
+    for (std::size_t i = rows.size(); i-- > 0;) {
+        if (i + 1 < rows.size()) smoothed = smooth(filtered[i], motion, expected[i + 1], smoothed);
+        expect_close(smoothed.mean(0), rows[i][1]);
+        expect_close(smoothed.mean(1), rows[i][2]);
+        expect_close(smoothed.covariance(0, 0), rows[i][3]);
+        expect_close(smoothed.covariance(0, 1), rows[i][4]);
+        expect_close(smoothed.covariance(1, 1), rows[i][5]);
     }
 }
 
