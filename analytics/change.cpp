@@ -13,6 +13,7 @@ constexpr double most_surprise = 4.0;  // counted of one summary
 constexpr double enough = 8.0;         // two net summaries at three standard deviations
 constexpr double done_within_h = 8.0;  // running hours
 const double least_step = std::log(1.3);
+const double least_fall = std::log(1.3);
 constexpr Milliseconds same_hour = std::chrono::hours(1);
 
 double added(double evidence, double surprise) {
@@ -26,7 +27,8 @@ bool ChangeDetector::add(double surprise, Instant at, double running_h, LogEstim
     const double counted = std::clamp(surprise, -most_surprise, most_surprise);
     if (up_ == 0.0 && down_ == 0.0) before_ = {.began = at, .running_h = running_h, .ln_wear = wear_before.ln};
     up_ = added(up_, counted);
-    down_ = added(down_, -counted);
+    // Wear does not heal: down goes only what was worn and has been replaced, or a fault that has been mended.
+    down_ = wear_before.ln > least_fall ? added(down_, -counted) : 0.0;
     if (up_ < enough && down_ < enough) return false;
     // What goes down is followed by the filter and is no step; what goes up further is one departure.
     if (down_ >= enough)

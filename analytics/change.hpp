@@ -27,7 +27,8 @@ public:
     //
     //   g = max(0, g + 3 r - 4.5),   r = surprise, held within -+4 so that no summary can decide alone
     //
-    // True when g passes 8: wear is to be let go before this summary is fed. NaN adds nothing.
+    // True when g passes 8: wear is to be let go before this summary is fed. NaN adds nothing; nor does what lies low while
+    // the ratio before is under 1.3, since wear does not heal.
     // Example: surprises 3, 3 -> true at the second; 2.5, 2.5, 2.5 -> false; 9 once -> false.
     // Source: E. S. Page, Continuous inspection schemes (1954) (from memory); limits from method.md, 5.
     bool add(double surprise, Instant at, double running_h, LogEstimate wear_before);

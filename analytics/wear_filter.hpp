@@ -142,6 +142,7 @@ private:
     void feed_contrasts(const Moments& moments, bool settled);
     void feed_stop(const Summary& summary, bool settled);
     void take(const Sighting& seen, bool settled);
+    void keep_from_healing();
     WearVector held(WearVector gain, bool settled) const;
     void remember(const Moments& moments);
     LogEstimate leakage_at(const DutyPoint& at, bool worn) const;

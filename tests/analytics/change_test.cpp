@@ -13,11 +13,13 @@ using std::chrono::hours;
 const Instant start = std::chrono::sys_days{std::chrono::year{2026} / 3 / 2};
 const LogEstimate as_new{0.0, 0.02};
 
-bool fed(ChangeDetector& detector, std::initializer_list<double> surprises) {
+const LogEstimate worn{0.6, 0.05};
+
+bool fed(ChangeDetector& detector, std::initializer_list<double> surprises, LogEstimate before = as_new) {
     bool opened = false;
     int hour = 0;
     for (const double surprise : surprises) {
-        opened = detector.add(surprise, start + hours(hour), hour, as_new);
+        opened = detector.add(surprise, start + hours(hour), hour, before);
         ++hour;
     }
     return opened;
@@ -29,7 +31,7 @@ TEST(Change, OpensAtTheSecondOfTwoDeparturesOfThreeDeviations) {
     EXPECT_FALSE(fed(detector, {3.0}));
     EXPECT_TRUE(fed(detector, {3.0}));
     ChangeDetector down;
-    EXPECT_TRUE(fed(down, {-3.0, -3.0}));
+    EXPECT_TRUE(fed(down, {-3.0, -3.0}, worn));
 }
 
 // reference: ChangeDetector::add - hand-worked: held at 4, 3 * 4 - 4.5 = 7.5, short of 8
@@ -44,6 +46,12 @@ TEST(Change, IsNeverDecidedByOneSummaryAlone) {
 TEST(Change, DoesNotAddUpWhatIsOnlyALittleHigh) {
     ChangeDetector detector;
     for (int i = 0; i < 1000; ++i) EXPECT_FALSE(detector.add(1.4, start + hours(i), i, as_new));
+}
+
+// reference: ChangeDetector::add - hand-worked: a ratio of 1 has nowhere to fall from
+TEST(Change, TakesNothingForHealing) {
+    ChangeDetector detector;
+    EXPECT_FALSE(fed(detector, {-4.0, -4.0, -4.0, -4.0}));
 }
 
 // reference: ChangeDetector::follow - hand-worked: 0.5 - 0 >= ln 1.3 = 0.262 with its low end 0.5 - 0.064 past 0.131
@@ -74,7 +82,7 @@ TEST(Change, IsNoStepWhenItTookLongerThanEightRunningHours) {
 // reference: ChangeDetector::follow - hand-worked: downward departures open and are followed, never steps
 TEST(Change, DownwardIsFollowedWithoutBeingAStep) {
     ChangeDetector detector;
-    EXPECT_TRUE(fed(detector, {-4.0, -4.0}));
+    EXPECT_TRUE(fed(detector, {-4.0, -4.0}, worn));
     EXPECT_FALSE(detector.follow({-0.6, 0.05}, start + hours(3), 3.0));
     EXPECT_FALSE(detector.step().active);
 }
