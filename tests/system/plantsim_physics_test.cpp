@@ -61,9 +61,9 @@ TEST(PlantsimSection, FindsTheGrowthThatGivesARatio) {
     const PlantDrawing mill = veneer_mill();
     const PumpDrawing& press = mill.pumps.front();
     const Life& life = press.sections[0].lives[0];
-    const Fitted& fitted = press.sections[0].fitted;
-    const double growth = growth_for(life, fitted, vg46, press.rated, 2.5);
-    EXPECT_NEAR(true_ratio(life, fitted, vg46, press.rated, growth), 2.5, 1e-6);
+    const Seen seen = seen_by(press.sections[0].fitted);
+    const double growth = growth_for(life, seen, vg46, press.rated, 2.5);
+    EXPECT_NEAR(true_ratio(life, seen, vg46, press.rated, growth), 2.5, 1e-6);
     EXPECT_GT(growth, 1.3);  // not the cube root of 2.5 for all gaps alike: some do not wear
 }
 

@@ -3,6 +3,7 @@
 #include <date/tz.h>
 
 #include <algorithm>
+#include <cmath>
 
 namespace slipledger::plantsim {
 namespace {
@@ -19,7 +20,7 @@ bool in_break(Millis in_day) {
 }  // namespace
 
 Calendar::Calendar(const PlantDrawing& plant, Millis from, Millis to)
-    : from_(from), year_begins_(plant.year_begins), stops_(plant.stops) {
+    : from_(from), year_begins_(plant.year_begins), season_at_begin_(plant.season_at_begin), stops_(plant.stops) {
     const auto* zone = date::locate_zone(plant.time_zone);
     for (Millis time = from; time <= to; time += hour_ms) {
         const auto info = zone->get_info(date::sys_time<std::chrono::milliseconds>{std::chrono::milliseconds{time}});
@@ -50,6 +51,11 @@ Timetable Calendar::timetable(Shifts shifts, Millis time) const {
 
 double Calendar::year_share(Millis time) const {
     return static_cast<double>(time - year_begins_) / (year_days * static_cast<double>(day_ms));
+}
+
+double Calendar::season(Millis time) const {
+    const double share = year_share(time) + season_at_begin_;
+    return share - std::floor(share);
 }
 
 }  // namespace slipledger::plantsim

@@ -19,11 +19,13 @@ public:
     Millis local(Millis time) const;  // milliseconds of the wall clock since 1970-01-01 00:00 on it
     bool day_off(Millis time) const;
     Timetable timetable(Shifts shifts, Millis time) const;
-    double year_share(Millis time) const;  // 0 on 1 January, 1 a year later
+    double year_share(Millis time) const;  // years since the simulation began
+    double season(Millis time) const;      // share of the calendar year that is over, 0 to 1
 
 private:
     Millis from_;
     Millis year_begins_;
+    double season_at_begin_;
     std::vector<Millis> offsets_;  // of the wall clock against UTC, one an hour
     std::vector<std::array<Millis, 2>> stops_;
 };

@@ -10,6 +10,7 @@
 #include "tools/plantsim/clock_time.hpp"
 #include "tools/plantsim/gap.hpp"
 #include "tools/plantsim/oil.hpp"
+#include "tools/plantsim/trouble.hpp"
 
 namespace slipledger::plantsim {
 
@@ -19,15 +20,24 @@ struct Duty {
     double fluid_temperature_c = 0.0;
 };
 
-// How a section's gaps open over a life. Before `begins` (a share of the pump's running hours in the simulated year)
-// nothing happens; from then on the fastest gap grows as a power of running hours, so that the leak, which goes with
-// the cube, speeds up by itself. A step is a piece broken out at one moment.
+// How wear goes on, s being the share of its running hours that is over (wear.hpp has the formulas).
+enum class WearLaw {
+    gap_power,    // the fastest gap grows as s^bend, so that the leak, which goes with the cube, speeds up by itself
+    ratio_power,  // the leakage ratio grows as s^bend
+    ratio_rate,   // the ratio grows the faster the higher it is: dw/ds goes with w^bend
+    ratio_exponential,  // the ratio grows as exp(bend s): above 0 ever faster, below ever slower
+};
+
+// How a section's gaps open over a life. Before `begins` (a share of the pump's running hours in the simulated span)
+// nothing happens; from then on they follow the law, also beyond the span. A step is a piece broken out at one moment.
 struct Wear {
-    double end_ratio = 1.0;  // of leakage at the year's end, without the step; 1: never wears
+    double end_ratio = 1.0;  // of leakage at the span's end, without the step; 1: never wears
     double begins = 0.2;
-    double power = 1.1;
+    double bend = 1.1;
     std::optional<Millis> step_at{};
     double step_ratio = 1.0;
+    WearLaw law = WearLaw::gap_power;
+    double first_ratio = 1.0;  // where it stands when the life is first seen
 };
 
 // A cartridge, rotating group or gear set in service from `from` on.
@@ -73,32 +83,45 @@ struct PumpDrawing {
     double slip_at_rated = 0.012;
     std::optional<Compensator> compensator{};  // without: fixed displacement
     Shifts shifts = Shifts::three;
+    Millis thermometer_lag = 0;  // the thermometer shows the oil of so long ago
     double idle_bar = 15.0;
     bool gauge_behind_check_valve = false;  // shows pressure while the pump stands
     bool has_speed = true;
     bool has_temperature = true;
     bool has_running = false;
+    bool has_inlet_pressure = false;
+    bool has_case_pressure = false;
     std::optional<Millis> starts{};  // commissioned then; not given: before the year
     std::optional<Millis> falls_silent{};
     std::optional<std::array<Millis, 2>> overhaul{};  // stands from, to
     std::vector<SectionDrawing> sections{};
+    Troubles troubles{};
+};
+
+// What a tank was filled with, from when on.
+struct OilFill {
+    Millis from = 0;
+    Oil oil{};
 };
 
 struct ReservoirDrawing {
     std::string id{};
-    Oil oil{};
+    Oil oil{};  // at first
+    std::vector<OilFill> oil_changes{};
     double heat_capacity_kj_per_k = 1200.0;  // oil and steel
     double wall_w_per_k = 120.0;             // to the hall's air
     double cooler_w_per_k = 900.0;           // to the cooling water, thermostat open
     bool air_cooled = false;                 // by the air outside, so that a hot summer makes hot oil
     double cooler_opens_c = 43.0;
     double machine_losses = 0.25;  // share of hydraulic power that stays in the oil
+    Troubles troubles{};
 };
 
 struct PlantDrawing {
     std::string time_zone{};
-    Millis year_begins = 0;
+    Millis year_begins = 0;  // what is simulated; need not be a year
     Millis year_ends = 0;
+    double season_at_begin = 0.0;                // share of the calendar year that is over then
     std::vector<std::array<Millis, 2>> stops{};  // of the whole mill: holidays and maintenance
     std::vector<ReservoirDrawing> reservoirs{};
     std::vector<PumpDrawing> pumps{};

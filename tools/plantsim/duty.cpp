@@ -56,7 +56,9 @@ Demand DutyPlan::working(std::size_t section, Millis time) const {
     const std::vector<double>& products = pump_.sections[section].product_bar;
     const double draw = chance.uniform(product_stream + slot);
     const double product = products[static_cast<std::size_t>(draw * static_cast<double>(products.size()))];
-    const double load_bar = product * season(section, time) * (1.0 + 0.025 * chance.wander(time, 12 * minute_ms));
+    const double heavier = 1.0 + total(pump_.troubles, TroubleKind::heavier_work, time);
+    const double load_bar =
+        product * season(section, time) * heavier * (1.0 + 0.025 * chance.wander(time, 12 * minute_ms));
 
     const bool closing = chance.uniform(closing_stream + time / minute_ms) < closing_share;
     if (closing) return {.doing = Doing::working, .pressure_bar = closing_pressure * load_bar};
@@ -64,7 +66,8 @@ Demand DutyPlan::working(std::size_t section, Millis time) const {
         return {.doing = Doing::working, .pressure_bar = load_bar};
 
     const double stroke = 0.08 + 0.3 * chance.uniform(stroke_stream + time / (5 * minute_ms));
-    const double plateau = pump_.compensator->setting_bar - pump_.compensator->droop_bar * stroke;
+    const double setting = pump_.compensator->setting_bar + total(pump_.troubles, TroubleKind::compensator_moved, time);
+    const double plateau = setting - pump_.compensator->droop_bar * stroke;
     return {.doing = Doing::holding, .pressure_bar = plateau + 0.4 * chance.wander(time, 2 * day_ms), .stroke = stroke};
 }
 

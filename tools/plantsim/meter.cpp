@@ -17,6 +17,11 @@ constexpr double calibration_cst = 30.0;
 MeterClass pressure_class() {
     return {.gain_spread = 0.003, .zero_spread = 0.15, .noise = 0.1, .noise_share = 0.003, .last_digit = 0.1};
 }
+
+MeterClass low_pressure_class() {
+    return {.gain_spread = 0.005, .zero_spread = 0.01, .noise = 0.005, .last_digit = 0.005};
+}
+
 MeterClass speed_class() {
     return {.gain_spread = 0.0003, .noise = 0.6, .last_digit = 1.0, .least = 5.0};
 }

@@ -20,6 +20,7 @@ struct MeterClass {
 };
 
 MeterClass pressure_class();
+MeterClass low_pressure_class();  // of a case or an inlet
 MeterClass speed_class();
 MeterClass temperature_class();
 MeterClass drain_class();     // small gear flow meter

@@ -11,9 +11,18 @@
 
 namespace slipledger::plantsim {
 
-enum class Column { outlet_pressure, shaft_speed, case_drain_flow, fluid_temperature, delivery_flow, running };
+enum class Column {
+    outlet_pressure,
+    shaft_speed,
+    case_drain_flow,
+    fluid_temperature,
+    delivery_flow,
+    running,
+    inlet_pressure,
+    case_pressure,
+};
 
-inline constexpr std::size_t column_count = 6;
+inline constexpr std::size_t column_count = 8;
 inline constexpr double no_value = std::numeric_limits<double>::quiet_NaN();
 
 struct ColumnFacts {
@@ -28,6 +37,8 @@ inline constexpr std::array<ColumnFacts, column_count> column_table{{
     {"fluid_temperature", 1},
     {"delivery_flow", 2},
     {"running", 0},
+    {"inlet_pressure", 3},
+    {"case_pressure", 2},
 }};
 
 // Threads: a value; the names it views belong to the plant's drawing or the load plan.
@@ -35,7 +46,8 @@ struct Row {
     Millis time = 0;
     std::string_view pump{};
     std::string_view section{};  // empty: the pump has one only
-    std::array<double, column_count> values = {no_value, no_value, no_value, no_value, no_value, no_value};
+    std::array<double, column_count> values = {no_value, no_value, no_value, no_value,
+                                               no_value, no_value, no_value, no_value};
 
     double& operator[](Column column) { return values[static_cast<std::size_t>(column)]; }
     double operator[](Column column) const { return values[static_cast<std::size_t>(column)]; }

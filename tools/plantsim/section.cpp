@@ -28,37 +28,40 @@ Strain reference_point(const Duty& rated) {
             .temperature_c = rated.fluid_temperature_c};
 }
 
-double true_ratio(const Life& life, const Fitted& fitted, const Oil& oil, const Duty& rated, double growth) {
-    const auto seen = [&](double at_growth) {
+Strain rated_point(const Duty& rated) {
+    return {
+        .pressure_bar = rated.pressure_bar, .speed_rpm = rated.speed_rpm, .temperature_c = rated.fluid_temperature_c};
+}
+
+Seen seen_by(const Fitted& fitted) {
+    return fitted.drain ? Seen::drain : Seen::everything;
+}
+
+double true_ratio(const Life& life, Seen seen, const Oil& oil, const Duty& rated, double growth) {
+    const auto leaks = [&](double at_growth) {
         Strain strain = reference_point(rated);
         strain.growth = at_growth;
         const Leakage flow = leakage(life, oil, strain, rated.pressure_bar);
-        return fitted.drain ? flow.to_drain_lpm : flow.to_drain_lpm + flow.inside_lpm;
+        return seen == Seen::drain ? flow.to_drain_lpm : flow.to_drain_lpm + flow.inside_lpm;
     };
-    return seen(growth) / seen(1.0);
+    return leaks(growth) / leaks(1.0);
 }
 
-double growth_for(const Life& life, const Fitted& fitted, const Oil& oil, const Duty& rated, double ratio) {
+double true_efficiency(const Life& life, Seen seen, const Oil& oil, Strain point, double rated_bar, double growth) {
+    point.growth = growth;
+    const double theoretical = life.displacement_cm3 * life.true_share * point.speed_rpm / 1000.0;
+    if (seen == Seen::everything) return delivered_lpm(life, oil, point, rated_bar, 1.0) / theoretical;
+    return 1.0 - leakage(life, oil, point, rated_bar).to_drain_lpm / theoretical;
+}
+
+double growth_for(const Life& life, Seen seen, const Oil& oil, const Duty& rated, double ratio) {
     double low = 1.0;
     double high = 8.0;
     for (int halving = 0; halving < 60; ++halving) {
         const double middle = 0.5 * (low + high);
-        (true_ratio(life, fitted, oil, rated, middle) < ratio ? low : high) = middle;
+        (true_ratio(life, seen, oil, rated, middle) < ratio ? low : high) = middle;
     }
     return low;
-}
-
-WearCourse::WearCourse(const Life& life, const Fitted& fitted, const Oil& oil, const Duty& rated, double year_hours)
-    : wear_(life.wear),
-      year_hours_(year_hours),
-      end_growth_(growth_for(life, fitted, oil, rated, wear_.end_ratio)),
-      step_growth_(growth_for(life, fitted, oil, rated, wear_.step_ratio)) {}
-
-double WearCourse::growth(double hours, Millis time) const {
-    const double share = std::clamp((hours / year_hours_ - wear_.begins) / (1.0 - wear_.begins), 0.0, 1.0);
-    const double slow = (end_growth_ - 1.0) * std::pow(share, wear_.power);
-    const bool broken = wear_.step_at && time >= *wear_.step_at;
-    return 1.0 + slow + (broken ? step_growth_ - 1.0 : 0.0);
 }
 
 }  // namespace slipledger::plantsim

@@ -18,28 +18,22 @@ double delivered_lpm(const Life& life, const Oil& oil, const Strain& strain, dou
 
 // 75 % of rated pressure, rated speed and temperature: where leakage ratios are quoted.
 Strain reference_point(const Duty& rated);
+Strain rated_point(const Duty& rated);
 
-// Leakage at the reference point at this growth / when healthy, of the part a meter of this kind sees. New oil, no
-// constant flows: the truth the judging side is held against.
-double true_ratio(const Life& life, const Fitted& fitted, const Oil& oil, const Duty& rated, double growth);
+// Whose leakage a meter sees.
+enum class Seen { drain, everything };
+
+Seen seen_by(const Fitted& fitted);  // the drain's, where that is metered
+
+// Leakage at the reference point at this growth / when healthy, as far as it is seen. New oil, no constant flows: the
+// truth the judging side is held against.
+double true_ratio(const Life& life, Seen seen, const Oil& oil, const Duty& rated, double growth);
+
+// Volumetric efficiency at this point, a fraction: what a meter at the outlet or in the drain would make of it if it
+// and the displacement were known exactly. New oil, no constant flows.
+double true_efficiency(const Life& life, Seen seen, const Oil& oil, Strain point, double rated_bar, double growth);
 
 // The growth at which true_ratio() is `ratio` (>= 1).
-double growth_for(const Life& life, const Fitted& fitted, const Oil& oil, const Duty& rated, double ratio);
-
-// How a life's gaps have grown: prepared once, then asked. Threads: immutable, share freely.
-class WearCourse {
-public:
-    // `year_hours` are the running hours of the life at the year's end.
-    WearCourse(const Life& life, const Fitted& fitted, const Oil& oil, const Duty& rated, double year_hours);
-
-    // Growth after `hours` in service, at `time`.
-    double growth(double hours, Millis time) const;
-
-private:
-    Wear wear_;
-    double year_hours_;
-    double end_growth_;
-    double step_growth_;
-};
+double growth_for(const Life& life, Seen seen, const Oil& oil, const Duty& rated, double ratio);
 
 }  // namespace slipledger::plantsim

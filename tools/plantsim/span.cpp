@@ -17,6 +17,8 @@ CsvLayout layout_for(const PlantDrawing& plant, const std::vector<std::size_t>& 
         mark(Column::shaft_speed, pump.has_speed);
         mark(Column::fluid_temperature, pump.has_temperature);
         mark(Column::running, pump.has_running);
+        mark(Column::inlet_pressure, pump.has_inlet_pressure);
+        mark(Column::case_pressure, pump.has_case_pressure);
         for (const SectionDrawing& section : pump.sections) {
             mark(Column::case_drain_flow, section.fitted.drain);
             mark(Column::delivery_flow, section.fitted.delivery);

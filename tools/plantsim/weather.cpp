@@ -18,7 +18,7 @@ constexpr double hottest_hour = 15.0;
 Weather::Weather(const Calendar& calendar, std::uint64_t seed) : calendar_(calendar), spells_(seed, "weather") {}
 
 double Weather::season_c(Millis time) const {
-    const double share = calendar_.year_share(time);
+    const double share = calendar_.season(time);
     const double heat_wave = std::exp(-std::pow((share - heat_wave_middle) / heat_wave_width, 2.0));
     return 6.0 - 13.0 * std::cos(turn * (share - coldest)) + 6.0 * heat_wave;
 }
