@@ -20,14 +20,13 @@ plantsim::PlantDrawing plant_of(plantsim::Wear wear) {
     plantsim::PlantDrawing plant{.time_zone = "UTC", .year_begins = 1704067200000};
     plant.year_ends = plant.year_begins + span_days * day_ms;
     plant.reservoirs = {{.id = "tank"}};
-    plant.pumps = {{.id = "pump-1",
-                    .rated = {280.0, 1480.0, 50.0},
-                    .sections = {{.id = "A",
-                                  .fitted = {.drain = true},
-                                  .product_bar = {160.0, 200.0},
-                                  .lives = {{.displacement_cm3 = 140.0,
-                                             .gaps = plantsim::axial_piston_gaps(),
-                                             .wear = wear}}}}}};
+    plant.pumps = {
+        {.id = "pump-1",
+         .rated = {280.0, 1480.0, 50.0},
+         .sections = {{.id = "A",
+                       .fitted = {.drain = true},
+                       .product_bar = {160.0, 200.0},
+                       .lives = {{.displacement_cm3 = 140.0, .gaps = plantsim::axial_piston_gaps(), .wear = wear}}}}}};
     return plant;
 }
 

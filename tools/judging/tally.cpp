@@ -3,6 +3,8 @@
 #include <algorithm>
 #include <cmath>
 
+#include "analytics/stats/garwood.hpp"
+
 namespace slipledger::judging {
 namespace {
 
@@ -28,7 +30,9 @@ double mean(const std::vector<double>& values) {
 }  // namespace
 
 double FalseAlerts::at_most() const {
-    return years > 0.0 ? garwood(alerts, 0.9).high / years : not_told;
+    constexpr double tail = 0.05;
+    const auto count = static_cast<std::uint64_t>(alerts);
+    return years > 0.0 ? analytics::stats::garwood_bounds(count, tail).high / years : not_told;
 }
 
 FalseAlerts false_alerts(const std::vector<SectionOutcome>& all, Teller teller, const Chosen& chosen) {

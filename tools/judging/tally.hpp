@@ -7,7 +7,6 @@
 #include <vector>
 
 #include "tools/judging/bench.hpp"
-#include "tools/judging/garwood.hpp"
 
 namespace slipledger::judging {
 

@@ -1,6 +1,7 @@
 // The truth about one section, asked of the simulator: what the judging side is held against (method.md, 3 and 9).
 #pragma once
 
+#include <limits>
 #include <optional>
 
 #include "config/pump.hpp"
@@ -15,7 +16,7 @@ using plantsim::Seen;
 struct ActLimits {
     double ratio = 3.0;
     double points_lost = 10.0;
-    double drain_share_percent = 0.0;
+    double drain_share_percent = std::numeric_limits<double>::quiet_NaN();
 };
 
 ActLimits act_limits_of(const config::Section& section);

@@ -3,6 +3,8 @@
 #include <algorithm>
 #include <cmath>
 
+#include "analytics/stats/theil_sen.hpp"
+
 namespace slipledger::judging {
 namespace {
 
@@ -20,7 +22,6 @@ constexpr double quiet_ratio = 1.2;
 constexpr double act_ratio = 3.0;
 constexpr std::size_t most_weeks = 26;
 constexpr std::size_t least_weeks = 6;
-constexpr double quantile_90 = 1.2815515655446004;
 
 analytics::Fluid fluid_of(const config::Fluid& fluid) {
     if (fluid.points.size() == 2)
@@ -76,34 +77,25 @@ std::optional<Line> line_through(std::span<const WorkingPoint> points) {
     return Line{.slope = xy / xx, .constant = y - xy / xx * x};
 }
 
-// One of the last weeks. Threads: a value.
-struct Week {
-    double running_h = 0.0;
-    double ratio = 1.0;
-};
+// Theil-Sen through the last weeks. Threads: one at a time.
+class Weeks {
+public:
+    void add(double running_h, double ratio) {
+        hours_.push_back(running_h);
+        ratios_.push_back(ratio);
+        if (hours_.size() <= most_weeks) return;
+        hours_.erase(hours_.begin());
+        ratios_.erase(ratios_.begin());
+    }
+    std::optional<analytics::stats::SlopeRange> slope() const {
+        if (hours_.size() < least_weeks) return std::nullopt;
+        return analytics::stats::theil_sen(hours_, ratios_, 0.8);
+    }
 
-struct Slope {
-    double low = 0.0;
-    double middle = 0.0;
-    double high = 0.0;
+private:
+    std::vector<double> hours_{};
+    std::vector<double> ratios_{};
 };
-
-// The median of all slopes, and the 80 % interval by Kendall's distribution (normal approximation).
-std::optional<Slope> theil_sen(std::span<const Week> weeks) {
-    if (weeks.size() < least_weeks) return std::nullopt;
-    std::vector<double> slopes;
-    for (std::size_t i = 0; i < weeks.size(); ++i)
-        for (std::size_t j = i + 1; j < weeks.size(); ++j)
-            if (const double run = weeks[j].running_h - weeks[i].running_h; run > 1.0)
-                slopes.push_back((weeks[j].ratio - weeks[i].ratio) / run);
-    if (slopes.size() < 2 * least_weeks) return std::nullopt;
-    std::ranges::sort(slopes);
-    const auto n = static_cast<double>(weeks.size());
-    const double reach = quantile_90 * std::sqrt(n * (n - 1.0) * (2.0 * n + 5.0) / 18.0);
-    const auto count = static_cast<double>(slopes.size());
-    const auto rank = [&](double at) { return slopes[static_cast<std::size_t>(std::clamp(at, 0.0, count - 1.0))]; };
-    return Slope{rank((count - reach) / 2.0), slopes[slopes.size() / 2], rank((count + reach) / 2.0)};
-}
 
 }  // namespace
 
@@ -193,7 +185,7 @@ SectionTold by_notebook(const Notes& notes) {
     const auto line = line_through(notes.between(notes.begins(), learned));
     if (!line) return told;
     const double healthy_share = line->at(notes.rated_drive()) / notes.rated_lpm();
-    std::vector<Week> weeks;
+    Weeks weeks;
     int day_of_week = 0;
     for (Millis day = learned; day + day_ms <= notes.ends(); day += day_ms) {
         std::vector<double> ratios;
@@ -201,8 +193,7 @@ SectionTold by_notebook(const Notes& notes) {
             if (const double usual = line->at(point.drive); usual > 0.0) ratios.push_back(point.leakage_lpm / usual);
         if (ratios.size() < 7 * least_points) continue;
         const double ratio = median(std::move(ratios));
-        if (++day_of_week % 7 == 0) weeks.push_back({notes.running_h(day + day_ms), ratio});
-        if (weeks.size() > most_weeks) weeks.erase(weeks.begin());
+        if (++day_of_week % 7 == 0) weeks.add(notes.running_h(day + day_ms), ratio);
         set_alert(told, ratio > watch_ratio, ratio < quiet_ratio, day + day_ms);
         DayTold now{.end = day + day_ms,
                     .judged = true,
@@ -210,11 +201,11 @@ SectionTold by_notebook(const Notes& notes) {
                     .seen = seen_by(notes),
                     .ratio = ratio,
                     .efficiency = 1.0 - ratio * healthy_share};
-        const auto slope = theil_sen(weeks);
+        const auto slope = weeks.slope();
         if (slope && slope->low > 0.0 && ratio < act_ratio) {
             now.life_given = true;
             now.life_low_h = (act_ratio - ratio) / slope->high;
-            now.life_mid_h = (act_ratio - ratio) / slope->middle;
+            now.life_mid_h = (act_ratio - ratio) / slope->value;
             now.life_high_h = (act_ratio - ratio) / slope->low;
         }
         told.days.push_back(now);
