@@ -24,6 +24,7 @@ constexpr double longest_step = 0.5;     // in any logarithm, by one sighting
 constexpr double loose = 0.10;           // of predicted leakage: relinearise while less sure than this
 constexpr int relinearisations = 3;
 constexpr double speed_told_apart = 1.3;  // speed must vary by this factor before the speed term is learned
+constexpr double most_lowered = 0.15;  // in ln ratio, of a life's baseline
 constexpr double most_leakage = 1.2;      // of theoretical flow
 constexpr double least_leakage = -0.2;
 
@@ -259,11 +260,14 @@ void WearFilter::take(const Sighting& seen, bool settled) {
 
 // Wear does not heal, and at the end of run-in it is 1 by definition. What would pull it below that is a baseline that is still
 // wrong, so the baseline moves: the mean is projected along its covariance onto ratio 1 (Simon 2010, from memory). Without
-// it healthy pumps sank to 0.9 in their first two months, and stayed.
+// it healthy pumps sank to 0.9 in their first two months, and stayed. Only so far: what reads still lower is no longer a first
+// guess that was off but a meter or an oil, and stays to be seen.
 void WearFilter::keep_from_healing() {
     const double below = belief_.mean(ln_wear);
-    if (below >= 0.0) return;
-    belief_.mean -= belief_.covariance.col(ln_wear) * (below / belief_.covariance(ln_wear, ln_wear));
+    if (below >= 0.0 || lowered_ >= most_lowered) return;
+    const double part = std::min(1.0, (most_lowered - lowered_) / -below);
+    belief_.mean -= belief_.covariance.col(ln_wear) * (part * below / belief_.covariance(ln_wear, ln_wear));
+    lowered_ -= part * below;
 }
 
 void WearFilter::remember(const Moments& m) {

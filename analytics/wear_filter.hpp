@@ -118,7 +118,7 @@ public:
     // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
-        io(self.belief_.mean, self.belief_.covariance, self.primed_, self.contrasts_, self.means_, self.misfit_,
+        io(self.belief_.mean, self.belief_.covariance, self.primed_, self.contrasts_, self.means_, self.misfit_, self.lowered_,
            self.plate_cm3_, self.reference_.pressure_rise_bar, self.reference_.viscosity_pas,
            self.reference_.density_kgm3, self.reference_.speed_rpm);
         for (auto* span : {&self.pressure_, &self.viscosity_, &self.laminar_, &self.speed_}) io(span->low, span->high);
@@ -152,6 +152,7 @@ private:
     double contrasts_ = 0.0;  // fed so far
     double means_ = 0.0;      // fed so far, up to the memory of `misfit_`
     double misfit_ = 1.0;     // mean square of lately standardised innovations: over 1, the pump bends the three terms
+    double lowered_ = 0.0;  // by how much the baseline was moved so that wear does not heal, in ln ratio
     double plate_cm3_ = unknown;
     LeakageState reference_;
     SeenSpan pressure_;
