@@ -44,18 +44,27 @@ void ChangeDetector::explain(Instant at) {
     explained_at_ = at;
 }
 
-bool ChangeDetector::follow(LogEstimate wear, Instant at, double running_h) {
-    if (step_.active && wear.ln - step_.ln_before < least_step / 2.0) step_ = Step{};
-    if (!following_) return false;
+bool ChangeDetector::follow(LogEstimate wear, Instant at, double running_h, double lasting_h) {
+    for (Step* step : {&step_, &waiting_})
+        if (step->active && wear.ln - step->ln_before < least_step / 2.0) *step = Step{};
+    look_for_step(wear, at, running_h);
+    if (!waiting_.active || running_h - waiting_from_h_ < lasting_h) return false;
+    step_ = std::exchange(waiting_, Step{});
+    step_.ln_size = wear.ln - step_.ln_before;
+    return true;
+}
+
+void ChangeDetector::look_for_step(LogEstimate wear, Instant at, double running_h) {
+    if (!following_) return;
     const double size = wear.ln - departure_.ln_wear;
     const bool told = size >= least_step && size - 1.2816 * wear.sd >= least_step / 2.0;
     if (told || running_h - departure_.running_h > done_within_h) following_ = false;
-    if (!told) return false;
+    if (!told || waiting_.active) return;
     const bool attributed = explained_ && explained_at_ >= departure_.began - same_hour && explained_at_ <= at;
     // A second step on top of one in force is counted from where the first began.
     const double before = step_.active ? std::min(step_.ln_before, departure_.ln_wear) : departure_.ln_wear;
-    step_ = {.active = true, .attributed = attributed, .began = departure_.began, .ln_before = before, .ln_size = size};
-    return true;
+    waiting_ = {.active = true, .attributed = attributed, .began = departure_.began, .ln_before = before, .ln_size = size};
+    waiting_from_h_ = departure_.running_h;
 }
 
 }  // namespace slipledger::analytics

@@ -150,7 +150,7 @@ void Course::State::judge_step(Instant at) {
     const Step& step = change.step();
     const double ratio = std::exp(filter.wear().ln);
     RuleJudgement judgement{.value = ratio};
-    if (step.active && !step.attributed) {
+    if (step.active && !step.attributed && ratio > spec.limits.leakage_ratio.watch) {
         judgement = judge_ladder(ratio, spec.limits.leakage_ratio);
         judgement.beyond = std::max(judgement.beyond, Level::watch);
         Ladder left = spec.limits.leakage_ratio;
@@ -199,7 +199,7 @@ void Course::State::feed(const Summary& summary, Instant end) {
     fed_judged_h += summary.judged_h;
     today.mark_fed();
     if (!watching) return;
-    if (change.follow(filter.wear(), end, life_running_h)) today.mark_step(std::exp(change.step().ln_size));
+    if (change.follow(filter.wear(), end, life_running_h, spec.limits.step_lasting.h)) today.mark_step(std::exp(change.step().ln_size));
     judge_step(end);
 }
 

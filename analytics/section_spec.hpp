@@ -52,6 +52,7 @@ struct RuleLimits {
     Ladder over_temperature_c;
     Ladder case_pressure_bar;
     Ladder inlet_vacuum_bar;  // how far below 0 bar gauge, positive
+    RunningHours step_lasting{12.0};  // that a sudden change must last before it is told as a step
 };
 
 // How fast things may move before a point is `transient`.

@@ -128,6 +128,7 @@ constexpr std::array plant_rows{
     Key{"limits", "over_temperature_c", object, "ladder", "70, -, 80", "fluid temperature, degC"},
     Key{"limits", "case_pressure_bar", object, "ladder", "1.5, -, 3", "case pressure, bar"},
     Key{"limits", "inlet_vacuum_bar", object, "ladder", "0.2, -, 0.3", "bar the inlet is below 0 bar gauge"},
+    within("limits", "step_lasting_h", "h", 0, 1000, "12", "running hours a sudden change lasts before it is told"),
     above_zero("ladder", "watch", "", none, "", "limit of the level watch"),
     above_zero("ladder", "plan", "", none, "", "limit of the level plan"),
     above_zero("ladder", "act", "", none, "", "limit of the level act"),

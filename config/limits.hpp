@@ -30,6 +30,7 @@ struct Limits {
     Ladder over_temperature_c;   // fluid temperature
     Ladder case_pressure_bar;    // case pressure
     Ladder inlet_vacuum_bar;     // how far the inlet is below 0 bar gauge, as a positive number
+    double step_lasting_h = 12.0;  // running hours that a sudden change must last before it is told as a step
 
     bool operator==(const Limits&) const = default;
 };

@@ -108,6 +108,7 @@ void read_limits(const ObjectReader& reader, Limits& limits) {
     into("over_temperature_c", limits.over_temperature_c);
     into("case_pressure_bar", limits.case_pressure_bar);
     into("inlet_vacuum_bar", limits.inlet_vacuum_bar);
+    reader.read("step_lasting_h", limits.step_lasting_h);
 }
 
 void read_section_facts(const ObjectReader& reader, SectionDraft& draft) {

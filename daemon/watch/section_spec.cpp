@@ -36,6 +36,7 @@ analytics::Ladder ladder_of(const config::Ladder& ladder) {
 analytics::RuleLimits limits_of(const config::Limits& limits) {
     analytics::RuleLimits rules;
     rules.leakage_ratio = ladder_of(limits.leakage_ratio);
+    rules.step_lasting = analytics::RunningHours{limits.step_lasting_h};
     rules.efficiency_points_lost = ladder_of(limits.efficiency_points);
     rules.drain_share_percent = ladder_of(limits.drain_share_percent);
     rules.over_temperature_c = ladder_of(limits.over_temperature_c);

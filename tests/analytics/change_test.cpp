@@ -14,6 +14,7 @@ const Instant start = std::chrono::sys_days{std::chrono::year{2026} / 3 / 2};
 const LogEstimate as_new{0.0, 0.02};
 
 const LogEstimate worn{0.6, 0.05};
+constexpr double at_once = 0.0;
 
 bool fed(ChangeDetector& detector, std::initializer_list<double> surprises, LogEstimate before = as_new) {
     bool opened = false;
@@ -58,24 +59,43 @@ TEST(Change, TakesNothingForHealing) {
 TEST(Change, BecomesAStepWhenWearHasGrownByAThird) {
     ChangeDetector detector;
     fed(detector, {3.0, 3.0});
-    EXPECT_FALSE(detector.follow({0.2, 0.05}, start + hours(2), 2.0));
-    EXPECT_TRUE(detector.follow({0.5, 0.05}, start + hours(3), 3.0));
+    EXPECT_FALSE(detector.follow({0.2, 0.05}, start + hours(2), 2.0, at_once));
+    EXPECT_TRUE(detector.follow({0.5, 0.05}, start + hours(3), 3.0, at_once));
     EXPECT_TRUE(detector.step().active);
     EXPECT_FALSE(detector.step().attributed);
     EXPECT_EQ(detector.step().began, start);
     EXPECT_DOUBLE_EQ(detector.step().ln_size, 0.5);
-    EXPECT_FALSE(detector.follow({0.14, 0.05}, start + hours(9), 9.0));
+    EXPECT_FALSE(detector.follow({0.14, 0.05}, start + hours(9), 9.0, at_once));
     EXPECT_TRUE(detector.step().active);
-    EXPECT_FALSE(detector.follow({0.12, 0.05}, start + hours(10), 10.0));
+    EXPECT_FALSE(detector.follow({0.12, 0.05}, start + hours(10), 10.0, at_once));
     EXPECT_FALSE(detector.step().active);  // gone back to under half of ln 1.3
+}
+
+// reference: ChangeDetector::follow - hand-worked: begun at hour 0, it has lasted 12 running hours at hour 12
+TEST(Change, IsToldAsAStepOnlyOnceItHasLasted) {
+    ChangeDetector detector;
+    fed(detector, {3.0, 3.0});
+    for (int hour = 3; hour < 12; ++hour) EXPECT_FALSE(detector.follow({0.5, 0.05}, start + hours(hour), hour, 12.0)) << hour;
+    EXPECT_TRUE(detector.follow({0.55, 0.05}, start + hours(12), 12.0, 12.0));
+    EXPECT_DOUBLE_EQ(detector.step().ln_size, 0.55) << "as it has become";
+}
+
+// reference: ChangeDetector::follow - hand-worked: 0.12 is under half of ln 1.3 = 0.131
+TEST(Change, IsNeverToldWhenItGoesBackBeforeItHasLasted) {
+    ChangeDetector detector;
+    fed(detector, {3.0, 3.0});
+    EXPECT_FALSE(detector.follow({0.5, 0.05}, start + hours(3), 3.0, 12.0));
+    EXPECT_FALSE(detector.follow({0.12, 0.05}, start + hours(6), 6.0, 12.0));
+    EXPECT_FALSE(detector.follow({0.5, 0.05}, start + hours(13), 13.0, 12.0));
+    EXPECT_FALSE(detector.step().active);
 }
 
 // reference: ChangeDetector::follow - hand-worked: 9 running hours are more than 8
 TEST(Change, IsNoStepWhenItTookLongerThanEightRunningHours) {
     ChangeDetector detector;
     fed(detector, {3.0, 3.0});
-    EXPECT_FALSE(detector.follow({0.2, 0.05}, start + hours(9), 10.0));
-    EXPECT_FALSE(detector.follow({0.5, 0.05}, start + hours(10), 11.0));
+    EXPECT_FALSE(detector.follow({0.2, 0.05}, start + hours(9), 10.0, at_once));
+    EXPECT_FALSE(detector.follow({0.5, 0.05}, start + hours(10), 11.0, at_once));
     EXPECT_FALSE(detector.step().active);
 }
 
@@ -83,7 +103,7 @@ TEST(Change, IsNoStepWhenItTookLongerThanEightRunningHours) {
 TEST(Change, DownwardIsFollowedWithoutBeingAStep) {
     ChangeDetector detector;
     EXPECT_TRUE(fed(detector, {-4.0, -4.0}, worn));
-    EXPECT_FALSE(detector.follow({-0.6, 0.05}, start + hours(3), 3.0));
+    EXPECT_FALSE(detector.follow({-0.6, 0.05}, start + hours(3), 3.0, at_once));
     EXPECT_FALSE(detector.step().active);
 }
 
@@ -92,12 +112,12 @@ TEST(Change, IsAttributedFirstToWhatElseChangedThatHour) {
     ChangeDetector detector;
     detector.explain(start - std::chrono::minutes(30));
     fed(detector, {3.0, 3.0});
-    EXPECT_TRUE(detector.follow({0.5, 0.05}, start + hours(3), 3.0));
+    EXPECT_TRUE(detector.follow({0.5, 0.05}, start + hours(3), 3.0, at_once));
     EXPECT_TRUE(detector.step().attributed);
     ChangeDetector late;
     late.explain(start - hours(2));
     fed(late, {3.0, 3.0});
-    late.follow({0.5, 0.05}, start + hours(3), 3.0);
+    late.follow({0.5, 0.05}, start + hours(3), 3.0, at_once);
     EXPECT_FALSE(late.step().attributed);
 }
 

@@ -76,6 +76,7 @@ std::string place_of(const Key& key) {
         {"motor", "/pumps/0/motor"},
         {"steady", "/pumps/0/steady"},
         {"baseline", "/pumps/0/baseline"},
+        {"limits", "/pumps/0/limits"},
         {"sensor", "/pumps/0/sensors/delivery_flow"},
         {"spare", "/pumps/0/spare"},
         {"feed", key.name == "reply" || key.name == "idle_timeout" ? "/feeds/0" : "/feeds/1"},
