@@ -70,9 +70,8 @@ std::optional<double> replacement_cost(const config::Economics& economics, const
 double power_kw(const LeakCost& cost, const config::Economics& economics, double ratio) {
     const double worn = std::max(ratio, 1.0);
     if (cost.makes_up_by == MakesUpBy::stroke)
-        return analytics::leak_power_kw({.healthy_kw = cost.mean_kw,
-                                         .leakage_ratio = worn,
-                                         .motor_efficiency = economics.motor_efficiency});
+        return analytics::leak_power_kw(
+            {.healthy_kw = cost.mean_kw, .leakage_ratio = worn, .motor_efficiency = economics.motor_efficiency});
     return analytics::stretched_power_kw({.full_flow_kw = cost.mean_kw,
                                           .flow_lost_share = analytics::flow_lost_share(worn, cost.healthy_efficiency),
                                           .motor_efficiency = economics.motor_efficiency});
@@ -85,7 +84,8 @@ void add_money(LeakCost& cost, const config::Economics& economics, const DayVerd
     };
     cost.power_kw = power_kw(cost, economics, day.leakage_ratio.value);
     cost.kwh_per_year = cost.power_kw * cost.running_h_per_year;
-    cost.per_year = {per_year(day.leakage_ratio.value), per_year(day.leakage_ratio.low), per_year(day.leakage_ratio.high)};
+    cost.per_year = {per_year(day.leakage_ratio.value), per_year(day.leakage_ratio.low),
+                     per_year(day.leakage_ratio.high)};
     cost.per_year_and_ratio = per_year(2.0);  // both ways of losing power grow with the ratio in a straight line
     if (!cost.replacement_cost) return;
     if (day.trend.established)

@@ -41,7 +41,8 @@ std::string result(const WorkStep& step) {
     return fmt::format("{}{}{}  [{}]", written(step.value, step.digits), unit, sd, step.source);
 }
 
-// Name and formula, the formula with its numbers, and what comes of it: each begins with "=" in one column where it can.
+// Name and formula, the formula with its numbers, and what comes of it: each begins with "=" in one column where it
+// can.
 std::string step_text(const WorkStep& step) {
     const std::string lead = "  " + cell(printable(step.name), name_width) + " ";
     const std::string equals = std::string(name_width + 3, ' ') + std::string(step.symbol.size(), ' ') + " = ";
@@ -74,7 +75,9 @@ ordered_json as_written(double value, int digits) {
     return rounded;
 }
 
-ordered_json text_or_null(const std::string& text) { return text.empty() ? ordered_json(nullptr) : ordered_json(text); }
+ordered_json text_or_null(const std::string& text) {
+    return text.empty() ? ordered_json(nullptr) : ordered_json(text);
+}
 
 ordered_json step_json(const WorkChapter& chapter, const WorkStep& step) {
     return {{"chapter", chapter.title},
@@ -120,8 +123,9 @@ std::string working_text(const Working& working, const config::Plant& plant, boo
         out += '\n' + paragraph("", "The working ends here: " + printable(working.ends_because));
     if (points) out += points_text(working, plant);
     out += std::string(page_width, '-') + '\n';
-    out += paragraph("", "Formulas: * times, ^ to the power of, ln natural and log10 common logarithm. Numbers carry six "
-                         "significant digits.");
+    out += paragraph("",
+                     "Formulas: * times, ^ to the power of, ln natural and log10 common logarithm. Numbers carry six "
+                     "significant digits.");
     for (const std::string& caution : cautions()) out += paragraph("! ", caution);
     return out;
 }

@@ -12,8 +12,8 @@ namespace slipledger::report {
 // `points`: with a line for each operating point of the summary.
 std::string working_text(const Working& working, const config::Plant& plant, bool points);
 
-// {pump, section, basis, at, summary{}, life, steps[]{chapter, name, symbol, value, sd, unit, formula, numbers, source},
-// remarks[], points[], ends_because, cautions[]}
+// {pump, section, basis, at, summary{}, life, steps[]{chapter, name, symbol, value, sd, unit, formula, numbers,
+// source}, remarks[], points[], ends_because, cautions[]}
 nlohmann::ordered_json to_json(const Working& working);
 
 }  // namespace slipledger::report

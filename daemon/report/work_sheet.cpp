@@ -9,8 +9,12 @@ namespace slipledger::report {
 
 namespace {
 
-constexpr bool is_letter(char c) { return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z'); }
-constexpr bool goes_on(char c) { return is_letter(c) || c == '_' || (c >= '0' && c <= '9'); }
+constexpr bool is_letter(char c) {
+    return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z');
+}
+constexpr bool goes_on(char c) {
+    return is_letter(c) || c == '_' || (c >= '0' && c <= '9');
+}
 
 // As it stands in a formula: a minus must not run into the sign before it.
 std::string bracketed(double value, int digits) {
@@ -26,9 +30,13 @@ std::string written(double value, int digits) {
     return text == "-0" ? "0" : text;
 }
 
-void WorkSheet::chapter(std::string title) { chapters_.push_back({std::move(title), {}, {}}); }
+void WorkSheet::chapter(std::string title) {
+    chapters_.push_back({std::move(title), {}, {}});
+}
 
-void WorkSheet::remark(std::string text) { chapters_.back().remarks.push_back(std::move(text)); }
+void WorkSheet::remark(std::string text) {
+    chapters_.back().remarks.push_back(std::move(text));
+}
 
 void WorkSheet::put(WorkStep step) {
     if (!step.formula.empty()) step.numbers = with_numbers(step.formula);

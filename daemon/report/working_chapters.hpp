@@ -1,5 +1,5 @@
-// The chapters of a page of working, in their order; working.cpp calls one after the other until one says why it cannot go
-// on. Inside the room only: from outside call working_of.
+// The chapters of a page of working, in their order; working.cpp calls one after the other until one says why it cannot
+// go on. Inside the room only: from outside call working_of.
 #pragma once
 
 #include <optional>
@@ -13,14 +13,15 @@ namespace slipledger::report {
 // Why the page ends here; nullopt: it goes on.
 using Stop = std::optional<std::string>;
 
-// Raw reading to leakage and features at one instant (working_point.cpp). The last two want write_reference before them.
+// Raw reading to leakage and features at one instant (working_point.cpp). The last two want write_reference before
+// them.
 void write_readings(const WorkingFacts& facts, WorkSheet& sheet);
 void write_regime(const WorkingFacts& facts, WorkSheet& sheet);
 void write_leakage_seen(const WorkingFacts& facts, WorkSheet& sheet);
 void write_features(const WorkingFacts& facts, WorkSheet& sheet);
 
-// The oil's viscosity line; then its state at a temperature that stands on the page as "t" and `tag`, worked out in symbols
-// with the same tag (working_oil.cpp).
+// The oil's viscosity line; then its state at a temperature that stands on the page as "t" and `tag`, worked out in
+// symbols with the same tag (working_oil.cpp).
 void write_oil_line(const WorkingFacts& facts, WorkSheet& sheet);
 void write_oil_at(const WorkingFacts& facts, WorkSheet& sheet, double temperature_c, const std::string& tag);
 void write_reference(const WorkingFacts& facts, WorkSheet& sheet);

@@ -1,5 +1,5 @@
-// What a page of working is made from: one summary of one section on one basis with everything that went into it and came
-// out of it. Gathered from the ledger by watch/working_query.hpp, which leads the estimate there again.
+// What a page of working is made from: one summary of one section on one basis with everything that went into it and
+// came out of it. Gathered from the ledger by watch/working_query.hpp, which leads the estimate there again.
 #pragma once
 
 #include <optional>
@@ -32,7 +32,7 @@ struct EdgeConversion {
 // Threads: a value, share freely.
 struct ReadCell {
     analytics::JoinedReading reading;
-    std::string place;  // where it is measured: "press-1", "lathe-1 section A", "reservoir hpu-2"
+    std::string place;                        // where it is measured: "press-1", "lathe-1 section A", "reservoir hpu-2"
     std::vector<EdgeConversion> conversions;  // of the feeds that may have brought it
 };
 
@@ -50,10 +50,10 @@ struct WorkingFacts {
     const config::Pump& pump;        // as the plant file tells of it today
     const config::Section& section;  // the same
     analytics::Basis basis = analytics::Basis::case_drain;
-    config::Fluid oil;                      // in the reservoir at that time
-    std::string compared_with;              // "when new", "when watching began (2026-01-05)"
-    std::string remark;                     // on how the time was chosen, or what is not as usual; may be empty
-    std::string nothing_because;            // there is no summary at all to show; empty otherwise
+    config::Fluid oil;            // in the reservoir at that time
+    std::string compared_with;    // "when new", "when watching began (2026-01-05)"
+    std::string remark;           // on how the time was chosen, or what is not as usual; may be empty
+    std::string nothing_because;  // there is no summary at all to show; empty otherwise
 
     std::optional<ledger::SummaryRecord> record;  // everything below is about it
     analytics::SectionSpec spec;                  // that held then
@@ -64,7 +64,8 @@ struct WorkingFacts {
     std::optional<analytics::DayVerdict> so_far;  // what it says of the day up to then
     std::vector<ledger::DayRecord> judged_days;   // the last two finished ones that decided the level; ascending
     std::optional<ledger::DayRecord> day_record;  // of the summary's day
-    std::vector<analytics::AlarmChange> changes;  // of the life up to the summary's end, or its day's where that is over
+    std::vector<analytics::AlarmChange>
+        changes;  // of the life up to the summary's end, or its day's where that is over
     std::optional<LeakCost> cost;
 };
 

@@ -42,8 +42,11 @@ std::string source_of(const ReadCell& cell, const WorkingFacts& facts) {
 // What the feed's own text said, worked back from what is stored.
 void put_as_written(const ReadCell& cell, const CellName& name, const EdgeConversion& by, WorkSheet& sheet) {
     const double in_unit = cell.reading.value / by.factor - by.shift;
-    sheet.put({.name = fmt::format("as feed {} writes it", by.feed), .symbol = fmt::format("y_{}", name.symbol),
-               .value = (in_unit - by.offset) / by.scale, .unit = by.unit, .source = "worked back from what is stored"});
+    sheet.put({.name = fmt::format("as feed {} writes it", by.feed),
+               .symbol = fmt::format("y_{}", name.symbol),
+               .value = (in_unit - by.offset) / by.scale,
+               .unit = by.unit,
+               .source = "worked back from what is stored"});
 }
 
 std::string conversion(const EdgeConversion& by, const CellName& name) {
@@ -54,8 +57,11 @@ std::string conversion(const EdgeConversion& by, const CellName& name) {
 }
 
 void put_cell(const ReadCell& cell, const CellName& name, const WorkingFacts& facts, WorkSheet& sheet) {
-    WorkStep step{.name = name.name, .symbol = name.symbol, .value = cell.reading.value,
-                  .unit = std::string(facts_of(cell.reading.quantity).unit), .source = source_of(cell, facts)};
+    WorkStep step{.name = name.name,
+                  .symbol = name.symbol,
+                  .value = cell.reading.value,
+                  .unit = std::string(facts_of(cell.reading.quantity).unit),
+                  .source = source_of(cell, facts)};
     if (cell.conversions.size() == 1) {
         put_as_written(cell, name, cell.conversions.front(), sheet);
         step.formula = conversion(cell.conversions.front(), name);
@@ -65,34 +71,53 @@ void put_cell(const ReadCell& cell, const CellName& name, const WorkingFacts& fa
 
 void put_unmeasured(WorkSheet& sheet, const char* name, const char* symbol) {
     if (sheet.has(symbol)) return;
-    sheet.put({.name = name, .symbol = symbol, .value = 0.0, .unit = "bar", .source = "not measured: taken as 0 bar gauge"});
+    sheet.put(
+        {.name = name, .symbol = symbol, .value = 0.0, .unit = "bar", .source = "not measured: taken as 0 bar gauge"});
 }
 
 // Speed of a motor on the mains where none is measured.
 void put_motor_speed(const WorkingFacts& facts, WorkSheet& sheet) {
     const SectionSpec& spec = facts.spec;
-    sheet.put({.name = "motor, no load", .symbol = "n_0", .value = spec.motor_nominal_rpm, .unit = "rpm",
+    sheet.put({.name = "motor, no load",
+               .symbol = "n_0",
+               .value = spec.motor_nominal_rpm,
+               .unit = "rpm",
                .source = "plant file; no speed is measured"});
-    sheet.put({.name = "slip at rated pressure", .symbol = "s_m", .value = spec.motor_slip_at_rated,
+    sheet.put(
+        {.name = "slip at rated pressure", .symbol = "s_m", .value = spec.motor_slip_at_rated, .source = "plant file"});
+    sheet.put({.name = "rated pressure",
+               .symbol = "p_R",
+               .value = spec.rated.pressure_bar,
+               .unit = "bar",
                .source = "plant file"});
-    sheet.put({.name = "rated pressure", .symbol = "p_R", .value = spec.rated.pressure_bar, .unit = "bar",
-               .source = "plant file"});
-    sheet.put({.name = "shaft speed", .symbol = "n", .value = facts.point->point.speed_rpm, .unit = "rpm",
+    sheet.put({.name = "shaft speed",
+               .symbol = "n",
+               .value = facts.point->point.speed_rpm,
+               .unit = "rpm",
                .formula = facts.point->point.pressure_bar > 0.0 ? "n_0 * (1 - s_m * p / p_R)" : "n_0",
                .source = "motor's slip, linear in load"});
 }
 
-bool is_reversed(const WorkingFacts& facts) { return facts.point->joined.stroke < 0.0; }
+bool is_reversed(const WorkingFacts& facts) {
+    return facts.point->joined.stroke < 0.0;
+}
 
-std::string magnitude(const std::string& symbol, double value) { return value < 0.0 ? "abs(" + symbol + ")" : symbol; }
+std::string magnitude(const std::string& symbol, double value) {
+    return value < 0.0 ? "abs(" + symbol + ")" : symbol;
+}
 
 void put_pressure_rise(const WorkingFacts& facts, WorkSheet& sheet) {
     const bool drain = facts.basis == Basis::case_drain;
-    if (drain) put_unmeasured(sheet, "case pressure", "p_c");
-    else put_unmeasured(sheet, "inlet pressure", "p_i");
+    if (drain)
+        put_unmeasured(sheet, "case pressure", "p_c");
+    else
+        put_unmeasured(sheet, "inlet pressure", "p_i");
     const std::string from = is_reversed(facts) ? "p_i" : "p";
     const std::string against = drain ? "p_c" : is_reversed(facts) ? "p" : "p_i";
-    sheet.put({.name = "pressure rise", .symbol = "dp", .value = facts.point->point.pressure_rise_bar, .unit = "bar",
+    sheet.put({.name = "pressure rise",
+               .symbol = "dp",
+               .value = facts.point->point.pressure_rise_bar,
+               .unit = "bar",
                .formula = from + " - " + against,
                .source = drain ? "outlet over case: the leak's own pressure" : "outlet over inlet"});
 }
@@ -100,37 +125,63 @@ void put_pressure_rise(const WorkingFacts& facts, WorkSheet& sheet) {
 void put_theoretical_flow(const WorkingFacts& facts, WorkSheet& sheet) {
     const analytics::OperatingPoint& joined = facts.point->joined;
     const bool stroke_counts = facts.basis == Basis::delivery && std::isfinite(joined.stroke);
-    sheet.put({.name = "displacement", .symbol = "V", .value = facts.spec.displacement_cm3, .unit = "cm3/rev",
+    sheet.put({.name = "displacement",
+               .symbol = "V",
+               .value = facts.spec.displacement_cm3,
+               .unit = "cm3/rev",
                .source = "name plate"});
     std::string formula = "V * " + magnitude("n", joined.speed_rpm);
-    if (stroke_counts) formula += " * " + magnitude("s", joined.stroke);
-    else if (facts.spec.max_stroke_fraction != 1.0) formula += fmt::format(" * {:g}", facts.spec.max_stroke_fraction);
-    sheet.put({.name = "theoretical flow", .symbol = "q_th", .value = facts.point->point.theoretical_lpm, .unit = "L/min",
+    if (stroke_counts)
+        formula += " * " + magnitude("s", joined.stroke);
+    else if (facts.spec.max_stroke_fraction != 1.0)
+        formula += fmt::format(" * {:g}", facts.spec.max_stroke_fraction);
+    sheet.put({.name = "theoretical flow",
+               .symbol = "q_th",
+               .value = facts.point->point.theoretical_lpm,
+               .unit = "L/min",
                .formula = formula + " / 1000",
                .source = stroke_counts ? "displacement x speed x stroke" : "displacement x speed, at full stroke"});
 }
 
 void put_drain(const WorkingFacts& facts, WorkSheet& sheet) {
-    sheet.put({.name = "case flushing", .symbol = "q_f", .value = facts.spec.case_flushing_lpm, .unit = "L/min",
+    sheet.put({.name = "case flushing",
+               .symbol = "q_f",
+               .value = facts.spec.case_flushing_lpm,
+               .unit = "L/min",
                .source = "plant file"});
-    sheet.put({.name = "leakage seen", .symbol = "q_s", .value = facts.point->point.leakage_lpm, .unit = "L/min",
-               .formula = "q - q_f", .source = "by case drain: what leaks back inside is not seen"});
+    sheet.put({.name = "leakage seen",
+               .symbol = "q_s",
+               .value = facts.point->point.leakage_lpm,
+               .unit = "L/min",
+               .formula = "q - q_f",
+               .source = "by case drain: what leaks back inside is not seen"});
 }
 
 void put_delivery(const WorkingFacts& facts, WorkSheet& sheet) {
     const std::string read = is_reversed(facts) ? magnitude("q", facts.point->point.flow_lpm) : "q";
-    WorkStep delivered{.name = "delivery", .symbol = "q_d", .value = facts.point->point.delivery_lpm, .unit = "L/min",
-                       .formula = read, .source = "metered where the oil has expanded again"};
+    WorkStep delivered{.name = "delivery",
+                       .symbol = "q_d",
+                       .value = facts.point->point.delivery_lpm,
+                       .unit = "L/min",
+                       .formula = read,
+                       .source = "metered where the oil has expanded again"};
     if (facts.spec.delivery_meter.on_pressure_side) {
-        sheet.put({.name = "bulk modulus, secant", .symbol = "K", .value = facts.spec.fluid.bulk_modulus_gpa(),
-                   .unit = "GPa", .source = "plant file"});
+        sheet.put({.name = "bulk modulus, secant",
+                   .symbol = "K",
+                   .value = facts.spec.fluid.bulk_modulus_gpa(),
+                   .unit = "GPa",
+                   .source = "plant file"});
         delivered.formula = read + " / (1 - dp / (K * 10000))";
         delivered.name = "delivery, inlet density";
         delivered.source = "secant bulk modulus; metered at pressure";
     }
     sheet.put(std::move(delivered));
-    sheet.put({.name = "leakage seen", .symbol = "q_s", .value = facts.point->point.leakage_lpm, .unit = "L/min",
-               .formula = "q_th - q_d", .source = "by delivery"});
+    sheet.put({.name = "leakage seen",
+               .symbol = "q_s",
+               .value = facts.point->point.leakage_lpm,
+               .unit = "L/min",
+               .formula = "q_th - q_d",
+               .source = "by delivery"});
 }
 
 }  // namespace
@@ -150,8 +201,10 @@ void write_leakage_seen(const WorkingFacts& facts, WorkSheet& sheet) {
     sheet.chapter("Leakage seen at that instant");
     put_pressure_rise(facts, sheet);
     put_theoretical_flow(facts, sheet);
-    if (facts.basis == Basis::case_drain) put_drain(facts, sheet);
-    else put_delivery(facts, sheet);
+    if (facts.basis == Basis::case_drain)
+        put_drain(facts, sheet);
+    else
+        put_delivery(facts, sheet);
 }
 
 void write_features(const WorkingFacts& facts, WorkSheet& sheet) {
@@ -159,12 +212,21 @@ void write_features(const WorkingFacts& facts, WorkSheet& sheet) {
     const std::string rise = facts.point->point.pressure_rise_bar < 0.0 ? "0" : "dp";
     const std::string source = "terms of the published loss models";
     sheet.chapter("Features at that instant");
-    sheet.put({.name = "laminar feature", .symbol = "f1", .value = features.laminar,
-               .formula = rise + " / p_r * mu_r / mu", .source = source});
-    sheet.put({.name = "orifice feature", .symbol = "f2", .value = features.orifice,
-               .formula = "sqrt(" + rise + " / p_r * rho_r / rho)", .source = source});
-    sheet.put({.name = "speed feature", .symbol = "f3", .value = features.speed,
-               .formula = magnitude("n", facts.point->joined.speed_rpm) + " / n_r", .source = source});
+    sheet.put({.name = "laminar feature",
+               .symbol = "f1",
+               .value = features.laminar,
+               .formula = rise + " / p_r * mu_r / mu",
+               .source = source});
+    sheet.put({.name = "orifice feature",
+               .symbol = "f2",
+               .value = features.orifice,
+               .formula = "sqrt(" + rise + " / p_r * rho_r / rho)",
+               .source = source});
+    sheet.put({.name = "speed feature",
+               .symbol = "f3",
+               .value = features.speed,
+               .formula = magnitude("n", facts.point->joined.speed_rpm) + " / n_r",
+               .source = source});
 }
 
 }  // namespace slipledger::report

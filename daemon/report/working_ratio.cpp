@@ -25,30 +25,40 @@ struct RegimeTag {
 };
 constexpr std::array<RegimeTag, analytics::judged_regimes> regimes{{{"_m", "full-flow"}, {"_k", "compensating"}}};
 
-bool by_delivery(const WorkingFacts& facts) { return facts.basis == Basis::delivery; }
+bool by_delivery(const WorkingFacts& facts) {
+    return facts.basis == Basis::delivery;
+}
 
 std::string counts_words(const Summary& summary) {
     std::string words;
     for (std::size_t i = 0; i < summary.counts.size(); ++i)
         if (summary.counts[i] > 0)
-            words += fmt::format("{}{} {}", words.empty() ? "" : ", ", summary.counts[i],
-                                 name_of(static_cast<Standing>(i)));
+            words +=
+                fmt::format("{}{} {}", words.empty() ? "" : ", ", summary.counts[i], name_of(static_cast<Standing>(i)));
     return words;
 }
 
-std::uint32_t judged_points(const Summary& summary) { return summary.judged[0].count + summary.judged[1].count; }
+std::uint32_t judged_points(const Summary& summary) {
+    return summary.judged[0].count + summary.judged[1].count;
+}
 
 // One regime's means on the page. Threads: one.
 class RegimeMeans {
 public:
     RegimeMeans(const WorkingFacts& facts, WorkSheet& sheet, std::size_t regime)
-        : facts_(facts), sheet_(sheet), moments_(facts.record->summary.judged[regime]),
-          seen_(facts.record->summary.counts[regime]), tag_(regimes[regime].tag), name_(regimes[regime].name) {}
+        : facts_(facts),
+          sheet_(sheet),
+          moments_(facts.record->summary.judged[regime]),
+          seen_(facts.record->summary.counts[regime]),
+          tag_(regimes[regime].tag),
+          name_(regimes[regime].name) {}
 
     void write() {
         const std::uint32_t trimmed = (seen_ - moments_.count) / 2;
-        sheet_.remark(fmt::format("{}: {} points, {} left out at each end by how far they lie from a line of leakage on f1 "
-                                  "(5 % of 20 points or more), {} in the means.", name_, seen_, trimmed, moments_.count));
+        sheet_.remark(
+            fmt::format("{}: {} points, {} left out at each end by how far they lie from a line of leakage on f1 "
+                        "(5 % of 20 points or more), {} in the means.",
+                        name_, seen_, trimmed, moments_.count));
         mean("leakage seen", "q", moments_.leakage_lpm, "L/min");
         mean("laminar feature", "f1", moments_.feature[0], "");
         mean("orifice feature", "f2", moments_.feature[1], "");
@@ -63,8 +73,11 @@ public:
 
 private:
     void mean(const char* what, const char* symbol, double value, const char* unit) {
-        sheet_.put({.name = fmt::format("{}, {}", what, name_), .symbol = std::string(symbol) + tag_, .value = value,
-                    .unit = unit, .source = fmt::format("mean of {} points", moments_.count)});
+        sheet_.put({.name = fmt::format("{}, {}", what, name_),
+                    .symbol = std::string(symbol) + tag_,
+                    .value = value,
+                    .unit = unit,
+                    .source = fmt::format("mean of {} points", moments_.count)});
     }
 
     const WorkingFacts& facts_;
@@ -78,10 +91,12 @@ private:
 Stop why_nothing_to_feed(const WorkingFacts& facts) {
     const double run_in_h = facts.spec.baseline.run_in.h;
     if (facts.so_far->life_running_h < run_in_h)
-        return fmt::format("it is still run in: {:.1f} of {:g} running hours; such hours are shown but not learned from.",
-                           facts.so_far->life_running_h, run_in_h);
-    return std::string("this summary cannot be of a pump (leakage above theoretical flow, far below nothing, or a feature "
-                       "that is no number): it was not learned from.");
+        return fmt::format(
+            "it is still run in: {:.1f} of {:g} running hours; such hours are shown but not learned from.",
+            facts.so_far->life_running_h, run_in_h);
+    return std::string(
+        "this summary cannot be of a pump (leakage above theoretical flow, far below nothing, or a feature "
+        "that is no number): it was not learned from.");
 }
 
 void put_state(const WorkingFacts& facts, WorkSheet& sheet, WearState state, WorkStep step) {
@@ -98,15 +113,21 @@ void put_coefficients(const WorkingFacts& facts, WorkSheet& sheet) {
     put_state(facts, sheet, analytics::ln_orifice, {.name = "orifice, ln b", .symbol = "ln_b"});
     put_state(facts, sheet, analytics::ln_speed, {.name = "speed, ln c", .symbol = "ln_c"});
     const auto put = [&](const char* name, const char* symbol, double value) {
-        sheet.put({.name = name, .symbol = symbol, .value = value, .unit = "L/min",
-                   .formula = fmt::format("exp(ln_{})", symbol), .source = "at the reference point, healthy"});
+        sheet.put({.name = name,
+                   .symbol = symbol,
+                   .value = value,
+                   .unit = "L/min",
+                   .formula = fmt::format("exp(ln_{})", symbol),
+                   .source = "at the reference point, healthy"});
     };
     put("laminar leakage", "a", healthy.laminar_lpm);
     put("orifice leakage", "b", healthy.orifice_lpm);
     put("speed leakage", "c", healthy.speed_lpm);
 }
 
-bool saw(const WorkingFacts& facts, std::size_t regime) { return facts.record->summary.judged[regime].count > 0; }
+bool saw(const WorkingFacts& facts, std::size_t regime) {
+    return facts.record->summary.judged[regime].count > 0;
+}
 
 // Healthy and wear-dependent leakage of one regime's means, in symbols that end with its tag.
 struct RegimeFormulas {
@@ -137,21 +158,42 @@ RegimeFormulas formulas_of_both(const WorkingFacts& facts) {
 void put_range(WorkSheet& sheet, const WorkStep& value, const analytics::Ranged& range, const std::string& low,
                const std::string& high) {
     sheet.put(value);
-    sheet.put({.name = "80 % range, low end", .symbol = value.symbol + "_low", .value = range.low, .unit = value.unit,
-               .formula = low, .source = "10 % quantile of the normal"});
-    sheet.put({.name = "80 % range, high end", .symbol = value.symbol + "_high", .value = range.high, .unit = value.unit,
-               .formula = high, .source = "90 % quantile"});
+    sheet.put({.name = "80 % range, low end",
+               .symbol = value.symbol + "_low",
+               .value = range.low,
+               .unit = value.unit,
+               .formula = low,
+               .source = "10 % quantile of the normal"});
+    sheet.put({.name = "80 % range, high end",
+               .symbol = value.symbol + "_high",
+               .value = range.high,
+               .unit = value.unit,
+               .formula = high,
+               .source = "90 % quantile"});
 }
 
 void put_own_ratio(const WorkingFacts& facts, WorkSheet& sheet, const analytics::OwnReading& own) {
-    const RegimeFormulas formulas = saw(facts, 0) && saw(facts, 1) ? formulas_of_both(facts)
-                                                                   : formulas_of(facts, saw(facts, 0) ? 0 : 1);
-    sheet.put({.name = "healthy leakage", .symbol = "h", .value = own.healthy_lpm, .unit = "L/min",
-               .formula = formulas.healthy, .source = "model, at the hour's own features"});
-    sheet.put({.name = "leakage that wears", .symbol = "q_w", .value = own.leakage_lpm, .unit = "L/min",
-               .formula = formulas.worn, .source = "seen, less what does not grow with wear"});
-    put_range(sheet, {.name = "the summary's own ratio", .symbol = "w_own", .value = own.ratio, .sd = own.ratio_sd,
-                      .formula = "q_w / h", .source = "sd: scatter, and what is not known of the states"},
+    const RegimeFormulas formulas =
+        saw(facts, 0) && saw(facts, 1) ? formulas_of_both(facts) : formulas_of(facts, saw(facts, 0) ? 0 : 1);
+    sheet.put({.name = "healthy leakage",
+               .symbol = "h",
+               .value = own.healthy_lpm,
+               .unit = "L/min",
+               .formula = formulas.healthy,
+               .source = "model, at the hour's own features"});
+    sheet.put({.name = "leakage that wears",
+               .symbol = "q_w",
+               .value = own.leakage_lpm,
+               .unit = "L/min",
+               .formula = formulas.worn,
+               .source = "seen, less what does not grow with wear"});
+    put_range(sheet,
+              {.name = "the summary's own ratio",
+               .symbol = "w_own",
+               .value = own.ratio,
+               .sd = own.ratio_sd,
+               .formula = "q_w / h",
+               .source = "sd: scatter, and what is not known of the states"},
               facts.record->verdict.leakage_ratio, "w_own - 1.281552 * sd_w_own", "w_own + 1.281552 * sd_w_own");
 }
 
@@ -172,9 +214,10 @@ Stop write_estimate(const WorkingFacts& facts, WorkSheet& sheet) {
     if (!facts.course->filter().primed() || !std::isfinite(facts.record->verdict.leakage_ratio.value))
         return why_nothing_to_feed(facts);
     sheet.chapter("The estimate at the summary's end");
-    sheet.remark("A Kalman filter holds healthy leakage and wear together and is led on summary by summary; the states and "
-                 "their standard deviations below are its own, everything after them can be worked out. It was led here "
-                 "again from the newest checkpoint before this day.");
+    sheet.remark(
+        "A Kalman filter holds healthy leakage and wear together and is led on summary by summary; the states and "
+        "their standard deviations below are its own, everything after them can be worked out. It was led here "
+        "again from the newest checkpoint before this day.");
     put_coefficients(facts, sheet);
     if (by_delivery(facts))
         put_state(facts, sheet, analytics::displacement,
@@ -191,11 +234,17 @@ Stop write_estimate(const WorkingFacts& facts, WorkSheet& sheet) {
 void write_ratio(const WorkingFacts& facts, WorkSheet& sheet) {
     const analytics::WearFilter& filter = facts.course->filter();
     sheet.chapter("The leakage ratio");
-    sheet.remark(fmt::format("Leakage that grows with wear, now over {}. First by this summary alone, then as the filter "
-                             "holds it, which weighs all summaries up to here.", facts.compared_with));
+    sheet.remark(
+        fmt::format("Leakage that grows with wear, now over {}. First by this summary alone, then as the filter "
+                    "holds it, which weighs all summaries up to here.",
+                    facts.compared_with));
     put_own_ratio(facts, sheet, filter.own_reading(facts.record->summary));
-    put_range(sheet, {.name = "filtered ratio", .symbol = "w", .value = facts.record->verdict.filtered_ratio.value,
-                      .formula = "exp(x)", .source = "definition of x"},
+    put_range(sheet,
+              {.name = "filtered ratio",
+               .symbol = "w",
+               .value = facts.record->verdict.filtered_ratio.value,
+               .formula = "exp(x)",
+               .source = "definition of x"},
               facts.record->verdict.filtered_ratio, "exp(x - 1.281552 * sd_x)", "exp(x + 1.281552 * sd_x)");
 }
 

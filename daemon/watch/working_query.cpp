@@ -55,9 +55,14 @@ class Gathering {
 public:
     Gathering(const ledger::Reader& reader, const config::Plant& plant, const config::Pump& pump,
               const config::Section& section, const WorkingQuestion& question)
-        : reader_(reader), plant_(plant), question_(question), directory_(reader.directory()),
-          days_(plant.time_zone), track_(track_of(pump, section)),
-          length_(std::chrono::minutes(plant.summary_minutes)), facts_{.plant = plant, .pump = pump, .section = section} {}
+        : reader_(reader),
+          plant_(plant),
+          question_(question),
+          directory_(reader.directory()),
+          days_(plant.time_zone),
+          track_(track_of(pump, section)),
+          length_(std::chrono::minutes(plant.summary_minutes)),
+          facts_{.plant = plant, .pump = pump, .section = section} {}
 
     WorkingFacts run() {
         facts_.basis = track_.basis;
@@ -82,8 +87,8 @@ public:
 
 private:
     const ledger::TrackEntry& track_of(const config::Pump& pump, const config::Section& section) const {
-        const Basis basis = question_.basis.value_or(
-            report::speaking_track(reader_, directory_, pump.id, section.id).track.basis);
+        const Basis basis =
+            question_.basis.value_or(report::speaking_track(reader_, directory_, pump.id, section.id).track.basis);
         return directory_.track(pump.id, section.id, basis);
     }
 
@@ -132,8 +137,8 @@ private:
 
     FactsByDate stored_facts() const {
         const auto checkpoint = reader_.checkpoint_before(track_.id, facts_.record->date);
-        const std::int32_t from = checkpoint ? checkpoint->date - analytics::usual_days
-                                             : std::numeric_limits<std::int32_t>::min();
+        const std::int32_t from =
+            checkpoint ? checkpoint->date - analytics::usual_days : std::numeric_limits<std::int32_t>::min();
         FactsByDate facts;
         for (const ledger::DayFactsRecord& record : reader_.day_facts(track_.pump, from, facts_.record->date + 1))
             if (record.section == facts_.section.id) facts[record.date] = record.facts;
@@ -181,8 +186,8 @@ private:
             return after == points.begin() ? points.front() : *std::prev(after);
         }
         const auto& [full, compensating] = facts_.record->summary.judged;
-        const auto wanted = compensating.count > full.count ? analytics::Standing::compensating
-                                                            : analytics::Standing::full_flow;
+        const auto wanted =
+            compensating.count > full.count ? analytics::Standing::compensating : analytics::Standing::full_flow;
         const auto last = std::find_if(points.rbegin(), points.rend(),
                                        [&](const JudgedPoint& point) { return point.standing == wanted; });
         return last == points.rend() ? points.back() : *last;
@@ -244,11 +249,14 @@ private:
 
     static void add(std::vector<report::EdgeConversion>& conversions, const config::Feed& feed,
                     const config::Target& target) {
-        const analytics::Unit unit =
-            analytics::unit_named(target.quantity, target.unit).value_or(analytics::Unit{});
+        const analytics::Unit unit = analytics::unit_named(target.quantity, target.unit).value_or(analytics::Unit{});
         if (unit.factor == 1.0 && unit.offset == 0.0 && target.scale == 1.0 && target.offset == 0.0) return;
-        conversions.push_back({.feed = feed.id, .unit = std::string(unit.name), .scale = target.scale,
-                               .offset = target.offset, .shift = unit.offset, .factor = unit.factor});
+        conversions.push_back({.feed = feed.id,
+                               .unit = std::string(unit.name),
+                               .scale = target.scale,
+                               .offset = target.offset,
+                               .shift = unit.offset,
+                               .factor = unit.factor});
     }
 
     void add_days() {
@@ -264,7 +272,8 @@ private:
 
     void add_cost() {
         if (!facts_.day_record) return;
-        facts_.cost = report::query_cost(reader_, plant_, facts_.pump, facts_.section, track_, facts_.day_record->verdict);
+        facts_.cost =
+            report::query_cost(reader_, plant_, facts_.pump, facts_.section, track_, facts_.day_record->verdict);
     }
 
     const ledger::Reader& reader_;

@@ -1,5 +1,5 @@
-// Gathers from the ledger what a page of working is made from. It lives in this room because the readings are joined and
-// the estimate is led again by the code that judged them; report::working_of makes the page.
+// Gathers from the ledger what a page of working is made from. It lives in this room because the readings are joined
+// and the estimate is led again by the code that judged them; report::working_of makes the page.
 #pragma once
 
 #include <optional>
@@ -12,8 +12,8 @@ namespace slipledger::watch {
 
 // Threads: a value, share freely.
 struct WorkingQuestion {
-    std::optional<analytics::Instant> at;      // none: the last summary with something judged, else the last one
-    std::optional<analytics::Basis> basis;     // none: the one that speaks for the section today
+    std::optional<analytics::Instant> at;   // none: the last summary with something judged, else the last one
+    std::optional<analytics::Basis> basis;  // none: the one that speaks for the section today
 };
 
 // `plant`, `pump` and `section` must outlive what is returned.

@@ -50,8 +50,8 @@ int run(const Shared& shared, const Options& options) {
 
 void add_explain(CLI::App& app, Shared& shared) {
     const auto options = std::make_shared<Options>();
-    CLI::App* command = add_command(app, shared, "explain", "the working behind a verdict, from raw reading to level", true,
-                                    [&shared, options] { return run(shared, *options); });
+    CLI::App* command = add_command(app, shared, "explain", "the working behind a verdict, from raw reading to level",
+                                    true, [&shared, options] { return run(shared, *options); });
     command->add_option("pump", options->pump, "id of the pump")->required()->type_name("PUMP");
     command->add_option("--section", options->section, "which section, of a pump with several")->type_name("ID");
     command->add_option("--at", options->at, "an instant of the summary to explain; default: the last judged one")

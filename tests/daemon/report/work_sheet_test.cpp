@@ -24,18 +24,22 @@ Working page_with(std::vector<WorkStep> steps) {
     return working;
 }
 
-const WorkStep& last_step(const Working& working) { return working.chapters.back().steps.back(); }
+const WorkStep& last_step(const Working& working) {
+    return working.chapters.back().steps.back();
+}
 
 TEST(WorkSheet, PutsTheNumbersAsPrintedIntoTheFormula) {
-    const Working page = page_with({{.name = "temperature", .symbol = "t", .value = 48.6123456, .unit = "degC"},
-                                    {.name = "intercept", .symbol = "A", .value = 9.45582865217, .digits = 9},
-                                    {.name = "sum", .symbol = "s", .value = 331.2, .formula = "A + log10(t + 273.15)"}});
+    const Working page =
+        page_with({{.name = "temperature", .symbol = "t", .value = 48.6123456, .unit = "degC"},
+                   {.name = "intercept", .symbol = "A", .value = 9.45582865217, .digits = 9},
+                   {.name = "sum", .symbol = "s", .value = 331.2, .formula = "A + log10(t + 273.15)"}});
     EXPECT_EQ(last_step(page).numbers, "9.45582865 + log10(48.6123 + 273.15)");
 }
 
 TEST(WorkSheet, BracketsWhatIsBelowNoughtAndKnowsStandardDeviations) {
-    const Working page = page_with({{.name = "wear", .symbol = "x", .value = -0.02, .sd = 0.011},
-                                    {.name = "low", .symbol = "w_low", .value = 0.966, .formula = "exp(x - 1.28 * sd_x)"}});
+    const Working page =
+        page_with({{.name = "wear", .symbol = "x", .value = -0.02, .sd = 0.011},
+                   {.name = "low", .symbol = "w_low", .value = 0.966, .formula = "exp(x - 1.28 * sd_x)"}});
     EXPECT_EQ(last_step(page).numbers, "exp((-0.02) - 1.28 * 0.011)");
 }
 
@@ -54,8 +58,10 @@ TEST(Written, CarriesSixDigitsAndNoMinusNought) {
 
 TEST(WorkingText, FitsEightyColumnsHoweverLongAFormula) {
     const Working page = page_with({{.name = "slope", .symbol = "B", .value = 3.7},
-                                    {.name = "a very long name that has no room in its column", .symbol = "nu",
-                                     .value = 31.4215, .unit = "mm2/s",
+                                    {.name = "a very long name that has no room in its column",
+                                     .symbol = "nu",
+                                     .value = 31.4215,
+                                     .unit = "mm2/s",
                                      .formula = "10 ^ (10 ^ (B - B * log10(B + 273.15))) - 0.7 + B * B * B * B * B * B",
                                      .source = "a source that is told in quite a few words, and then in some more"}});
     std::istringstream lines(working_text(page, config::Plant{}, false));
@@ -77,10 +83,9 @@ TEST(WorkingText, MakesForeignTextPrintable) {
 }
 
 TEST(WorkingJson, IsAListOfStepsWithTheDigitsOfTheText) {
-    const auto json = to_json(page_with({{.name = "density", .symbol = "rho", .value = 852.912345, .unit = "kg/m3",
-                                          .source = "D1250"},
-                                         {.name = "twice", .symbol = "y", .value = 1705.82469, .formula = "2 * rho",
-                                          .source = "definition"}}));
+    const auto json = to_json(page_with(
+        {{.name = "density", .symbol = "rho", .value = 852.912345, .unit = "kg/m3", .source = "D1250"},
+         {.name = "twice", .symbol = "y", .value = 1705.82469, .formula = "2 * rho", .source = "definition"}}));
     const auto& step = json["steps"][1];
     EXPECT_EQ(json["steps"][0]["value"].dump(), "852.912");
     EXPECT_TRUE(json["steps"][0]["formula"].is_null());

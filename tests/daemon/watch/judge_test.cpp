@@ -84,6 +84,31 @@ TEST_F(JudgedHistory, ChangesWithOneLateRowAsIfItHadComeInTime) {
     EXPECT_EQ(in_blocks(late_last, late_last.size() - 1, 1), in_blocks(all, 100000, 1));
 }
 
+// By delivery, swings of pressure count only with a speed sensor, and whether there is one is read off the days before: also
+// off those before the pass, over which the estimate is led again from the checkpoint.
+TEST_F(JudgedHistory, IsTheSameWithoutASpeedSensorWhereARowComesWeeksLate) {
+    const auto history = [](std::size_t late_rows) {
+        Mill mill;
+        std::vector<Row> all = demo_rows(mill.point("press-1"), 36, {}, 7);
+        for (Row& row : all) {
+            using analytics::Quantity;
+            const double drain = row.value[index_of(Quantity::case_drain_flow)];
+            row.present = static_cast<std::uint16_t>(1U << index_of(Quantity::delivery_flow) |
+                                                     1U << index_of(Quantity::outlet_pressure) |
+                                                     1U << index_of(Quantity::fluid_temperature));
+            row.value[index_of(Quantity::delivery_flow)] = 71.0 * 1.48 - drain;
+        }
+        const auto late = all.begin() + 24 * 288 + 7;
+        std::rotate(late, late + static_cast<std::ptrdiff_t>(late_rows), all.end());
+        mill.store(std::span(all).first(all.size() - late_rows));
+        mill.judge();
+        mill.store(std::span(all).last(late_rows));
+        mill.judge();
+        return mill.history();
+    };
+    EXPECT_EQ(history(1), history(0));
+}
+
 // Five years are more summaries than one pass takes, so this one is cut short and gone on with.
 TEST_F(JudgedHistory, IsTheSameWhereARowFromYearsAgoComesLast) {
     std::vector<Row> all = rows();

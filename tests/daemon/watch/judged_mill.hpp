@@ -53,7 +53,8 @@ public:
     ledger::TrackId track(const std::string& pump, analytics::Basis basis) {
         return ledger_->directory().track(pump, "A", basis).id;
     }
-    std::vector<ledger::DayRecord> days(const std::string& pump, analytics::Basis basis = analytics::Basis::case_drain) {
+    std::vector<ledger::DayRecord> days(const std::string& pump,
+                                        analytics::Basis basis = analytics::Basis::case_drain) {
         return ledger::Reader(plant.store.path).days(track(pump, basis), -1000000, 1000000);
     }
     std::vector<ledger::Notice> notices() { return ledger::Reader(plant.store.path).notices(""); }
@@ -66,7 +67,8 @@ public:
         for (const ledger::TrackEntry& entry : ledger_->directory().tracks) {
             text += fmt::format("track {} {} {}\n", entry.pump_name, entry.section, name_of(entry.basis));
             for (const auto& day : reader.days(entry.id, -1000000, 1000000)) text += line(day);
-            for (const auto& one : reader.summaries(entry.id, demo_begin - a_day, demo_begin + a_day * 400)) text += line(one);
+            for (const auto& one : reader.summaries(entry.id, demo_begin - a_day, demo_begin + a_day * 400))
+                text += line(one);
             for (const auto& change : reader.alarm_changes(entry.id)) text += line(change);
         }
         return text;
@@ -77,8 +79,8 @@ public:
 private:
     static std::string line(const ledger::DayRecord& day) {
         const analytics::DayVerdict& v = day.verdict;
-        return fmt::format("day {} {} life {} {} {} {:a} {:a} {:a} {:a} {:a} {:a} {:a}\n", v.day.date, day.finished, v.life,
-                           name_of(v.level), name_of(v.reason), v.leakage_ratio.value, v.leakage_ratio.low,
+        return fmt::format("day {} {} life {} {} {} {:a} {:a} {:a} {:a} {:a} {:a} {:a}\n", v.day.date, day.finished,
+                           v.life, name_of(v.level), name_of(v.reason), v.leakage_ratio.value, v.leakage_ratio.low,
                            v.leakage_ratio.high, v.efficiency.value, v.excess_lpm, v.hours_in_hand.low,
                            v.life_running_h);
     }

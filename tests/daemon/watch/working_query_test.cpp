@@ -1,5 +1,5 @@
-// The estimate behind a verdict is led again from stored summaries and comes out as it was, to the last bit; the readings
-// behind an operating point are joined as they were.
+// The estimate behind a verdict is led again from stored summaries and comes out as it was, to the last bit; the
+// readings behind an operating point are joined as they were.
 #include "daemon/watch/working_query.hpp"
 
 #include <gmock/gmock.h>
@@ -43,8 +43,10 @@ protected:
         const report::WorkingFacts facts = ask({.at = record.summary.start, .basis = {}});
         ASSERT_TRUE(facts.record && facts.course);
         const double ratio = record.verdict.filtered_ratio.value;
-        if (std::isnan(ratio)) EXPECT_FALSE(facts.course->filter().primed());
-        else EXPECT_EQ(std::exp(facts.course->filter().wear().ln), ratio);
+        if (std::isnan(ratio))
+            EXPECT_FALSE(facts.course->filter().primed());
+        else
+            EXPECT_EQ(std::exp(facts.course->filter().wear().ln), ratio);
         EXPECT_EQ(facts.points.size(), 12U);
     }
 
@@ -64,10 +66,24 @@ TEST_F(ShownWorking, LeadsTheEstimateToWhereItWasAtEachSummary) {
 }
 
 TEST_F(ShownWorking, DoesSoAcrossAReplacementAndAChangeOfOil) {
-    mill_.tell({.id = 0, .pump = "press-1", .section = "A", .kind = "replaced", .at = demo_begin + 24h * 9 + 90min,
-                .entered = {}, .by = "fitter", .user = "", .body = R"({"displacement_cm3":75})"});
-    mill_.tell({.id = 0, .pump = "press-1", .section = "", .kind = "oil-changed", .at = demo_begin + 24h * 15 + 10min,
-                .entered = {}, .by = "fitter", .user = "", .body = "{}"});
+    mill_.tell({.id = 0,
+                .pump = "press-1",
+                .section = "A",
+                .kind = "replaced",
+                .at = demo_begin + 24h * 9 + 90min,
+                .entered = {},
+                .by = "fitter",
+                .user = "",
+                .body = R"({"displacement_cm3":75})"});
+    mill_.tell({.id = 0,
+                .pump = "press-1",
+                .section = "",
+                .kind = "oil-changed",
+                .at = demo_begin + 24h * 15 + 10min,
+                .entered = {},
+                .by = "fitter",
+                .user = "",
+                .body = "{}"});
     fill(20);
     const std::vector<ledger::SummaryRecord> all = summaries();
     for (std::size_t i = 0; i < all.size(); i += 11) {
