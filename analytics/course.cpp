@@ -400,6 +400,10 @@ std::vector<AlarmChange> Course::drain_alarm_changes() {
     return std::exchange(state_->changes, {});
 }
 
+const WearFilter& Course::filter() const {
+    return state_->filter;
+}
+
 std::vector<std::byte> Course::checkpoint() const {
     CheckpointWriter writer;
     writer(checkpoint_version, state_->basis, *state_);

@@ -21,6 +21,8 @@
 
 namespace slipledger::analytics {
 
+class WearFilter;
+
 // A value with its 80 % range. NaN: not known.
 struct Ranged {
     double value = unknown;
@@ -136,6 +138,10 @@ public:
 
     // Changes of alarm state since the last call, in time order (see alarm.hpp). Drained by the caller.
     std::vector<AlarmChange> drain_alarm_changes();
+
+    // The estimate behind the verdicts, for showing their working; valid until the next call of a function that is not
+    // const. Not computed: reads the state.
+    const WearFilter& filter() const;
 
     // The whole state between two days, exactly; restore gives nullopt for bytes of another version.
     std::vector<std::byte> checkpoint() const;

@@ -74,12 +74,20 @@ Ranged quoted(const LogEstimate& estimate) {
         .value = std::exp(estimate.ln), .low = std::exp(estimate.ln - reach), .high = std::exp(estimate.ln + reach)};
 }
 
+double ratio_low_wanted(double limit) {
+    return 1.0 + (limit - 1.0) / 2.0;
+}
+
+double points_low_wanted(double limit) {
+    return limit / 2.0;
+}
+
 RuleJudgement judge_ratio(const Ranged& ratio, const Ladder& ladder) {
-    return judge_range(ratio, ladder, least_deadband, [](double limit) { return 1.0 + (limit - 1.0) / 2.0; });
+    return judge_range(ratio, ladder, least_deadband, ratio_low_wanted);
 }
 
 RuleJudgement judge_points_lost(const Ranged& points, const Ladder& ladder) {
-    return judge_range(points, ladder, points_deadband, [](double limit) { return limit / 2.0; });
+    return judge_range(points, ladder, points_deadband, points_low_wanted);
 }
 
 RuleJudgement capped(RuleJudgement judgement, Level most) {

@@ -16,6 +16,17 @@ namespace slipledger::analytics {
 // Source: method.md, 5.
 Ranged quoted(const LogEstimate& estimate);
 
+// How far the low end of a leakage ratio must reach for a limit L to be passed: 1 + (L - 1) / 2, half way from healthy.
+//
+// Returns a ratio. Example: limit 2 -> 1.5. Source: the rule's definition (design.md, 7).
+double ratio_low_wanted(double limit);
+
+// The same for points of efficiency lost: L / 2, half way from none.
+//
+// Returns points, 1 % of theoretical flow. Example: limit 7 -> 3.5. Source: by analogy with the ratio (common practice,
+// no source).
+double points_low_wanted(double limit);
+
 // A limit L on the leakage ratio is passed when the value is above L and its low end above 1 + (L - 1) / 2; it is left
 // once the value is below L less the deadband (at least 2 % of L, the scatter of a day). Example: 2.1 (1.6 to 2.7)
 // passes 2; 2.1 (1.4 to 3.0) passes only watch, at 1.17. Source: the rule's definition (design.md, 7).

@@ -77,6 +77,7 @@ struct Economics {
     double energy_price_per_kwh = 0.0;
     std::string currency;
     double motor_efficiency = 0.93;
+    double downtime_cost_per_h = 0.0;  // what an hour costs in which a replacement stops the machine
 
     bool operator==(const Economics&) const = default;
 };

@@ -156,6 +156,7 @@ void read_economics(const ObjectReader& reader, std::optional<Economics>& econom
     reader.read("energy_price_per_kwh", economics->energy_price_per_kwh);
     reader.read("currency", economics->currency);
     reader.read("motor_efficiency", economics->motor_efficiency);
+    reader.read("downtime_cost_per_h", economics->downtime_cost_per_h);
 }
 
 const Node* plant_limits(const Node& root) {

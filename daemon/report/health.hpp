@@ -12,6 +12,7 @@
 #include "analytics/instant.hpp"
 #include "daemon/report/dated_event.hpp"
 #include "daemon/report/episodes.hpp"
+#include "daemon/report/leak_cost.hpp"
 
 namespace slipledger::report {
 
@@ -50,7 +51,7 @@ struct SectionHealth {
     std::string sentence;
     std::optional<analytics::Basis> basis;
     std::optional<analytics::DayVerdict> verdict;  // of the newest day; none before anything was judged
-    double yearly_cost = analytics::unknown;
+    std::optional<LeakCost> cost;  // of leakage above healthy, at the usual duty; none: unjudged, or no prices given
     std::string currency;
     DataFacts data;
     LifeFacts life;

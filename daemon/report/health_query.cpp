@@ -16,9 +16,7 @@ namespace slipledger::report {
 
 namespace {
 
-constexpr double hours_a_year = 8766.0;
 constexpr std::size_t most_events = 20;
-constexpr std::int32_t duty_days = 28;  // usual duty is taken from so many days
 
 // What a report asks for once and every section of the pump uses.
 struct Asked {
@@ -70,29 +68,6 @@ LifeFacts life_facts(const Asked& asked, const config::Pump& pump, const config:
     if (facts.baseline == "when watching began" && facts.started)
         facts.baseline += " (" + local_date(*facts.started, asked.plant.time_zone) + ")";
     return facts;
-}
-
-// Running hours a year: planned duty, else as the newest weeks went.
-double yearly_hours(const Asked& asked, const SpeakingTrack& speaking) {
-    if (asked.plant.duty_h_per_week) return *asked.plant.duty_h_per_week / 7.0 * (hours_a_year / 24.0);
-    const std::int32_t to = speaking.newest_day->verdict.day.date + 1;
-    const auto days = asked.reader.days(speaking.track.id, to - duty_days, to);
-    double running_h = 0.0;
-    for (const ledger::DayRecord& day : days) running_h += day.verdict.running_h;
-    return days.empty() ? analytics::unknown
-                        : running_h / static_cast<double>(days.size()) * (hours_a_year / 24.0);
-}
-
-// Power lost to leakage above healthy, on pumps whose stroke makes up for it. On a fixed pump leakage costs flow, not
-// shaft power, so no money is shown (method: design of the project, "Money").
-double yearly_cost(const Asked& asked, const config::Pump& pump, const SpeakingTrack& speaking) {
-    if (!asked.plant.economics || pump.control == analytics::Control::fixed) return analytics::unknown;
-    const analytics::DayVerdict& day = speaking.newest_day->verdict;
-    if (!(day.leakage_lpm > 0.0)) return analytics::unknown;
-    const double excess_kw = day.leakage_kw * (day.excess_lpm / day.leakage_lpm);
-    const config::Economics& economics = *asked.plant.economics;
-    return std::max(0.0, excess_kw) / economics.motor_efficiency * yearly_hours(asked, speaking) *
-           economics.energy_price_per_kwh;
 }
 
 std::vector<std::string> notes_of(const config::Pump& pump, const config::Section& section,
@@ -159,7 +134,7 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
         health.verdict = day;
         health.level = day.level;
         health.reason = day.level == analytics::Level::unjudged ? std::string(name_of(day.reason)) : std::string();
-        health.yearly_cost = yearly_cost(asked, pump, speaking);
+        health.cost = query_cost(asked.reader, asked.plant, pump, section, speaking.track, day);
         health.notes = notes_of(pump, section, speaking, health.data);
     }
     if (asked.plant.economics) health.currency = asked.plant.economics->currency;

@@ -53,6 +53,23 @@ ordered_json causes_json(const SectionHealth& health) {
     return causes;
 }
 
+std::string_view name_of(config::MakesUpBy by) {
+    return by == config::MakesUpBy::stroke ? "stroke" : by == config::MakesUpBy::time ? "time" : "nothing";
+}
+
+ordered_json cost_json(const std::optional<LeakCost>& cost) {
+    if (!cost) return nullptr;
+    return {{"makes_up_by", name_of(cost->makes_up_by)},
+            {"flow_lost_percent", number(cost->flow_lost_percent)},
+            {"power_kw", number(cost->power_kw)},
+            {"running_h_per_year", number(cost->running_h_per_year)},
+            {"kwh_per_year", number(cost->kwh_per_year)},
+            {"per_year", ranged(cost->per_year)},
+            {"replacement", number(cost->replacement_cost.value_or(analytics::unknown))},
+            {"payback_years", number(cost->payback_years)},
+            {"pays_for_itself", text_or_null(cost->pays_in)}};
+}
+
 ordered_json data_json(const DataFacts& data) {
     ordered_json set_aside = ordered_json::object();
     for (const auto& [reason, count] : data.set_aside) set_aside[reason] = count;
@@ -98,8 +115,9 @@ ordered_json to_json(const SectionHealth& health) {
             {"excess_lpm", number(day.excess_lpm)},
             {"leakage_kw", number(day.leakage_kw)},
             {"slip_coefficient", number(day.slip_coefficient)},
-            {"yearly_cost", number(health.yearly_cost)},
+            {"yearly_cost", number(health.cost ? health.cost->per_year.value : analytics::unknown)},
             {"currency", text_or_null(health.currency)},
+            {"cost", cost_json(health.cost)},
             {"trend", trend_json(day.trend)},
             {"hours_in_hand", hours_json(day.hours_in_hand)},
             {"causes", causes_json(health)},

@@ -77,6 +77,25 @@ std::string trend_text(const analytics::Trend& trend) {
                        trend.per_1000_h.low, trend.per_1000_h.high, trend.established ? "" : ", not established");
 }
 
+std::string payback_words(const LeakCost& cost, const std::string& currency) {
+    const std::string price = fmt::format("{:.0f} {}", *cost.replacement_cost, currency);
+    if (!cost.pays_in.empty()) return fmt::format("{}; saved again in energy alone by {}", price, cost.pays_in);
+    return fmt::format("{}; not saved again in energy alone within {:.0f} years", price, longest_payback_years);
+}
+
+std::string cost_figures(const LeakCost& cost, const std::string& currency) {
+    std::string out;
+    if (cost.flow_lost_percent >= 0.05)
+        out += figure("flow lost", fmt::format("{:.1f} % less than when healthy", cost.flow_lost_percent),
+                      cost.flow_at_rated ? "at the rated point" : "at the reference point");
+    if (!std::isfinite(cost.per_year.value)) return out;
+    out += figure("cost of the leak", fmt::format("{} {} a year", with_range(cost.per_year, 0), printable(currency)),
+                  fmt::format("{} kW from the mains, {:.0f} running hours a year", plain(cost.power_kw, 2),
+                              cost.running_h_per_year));
+    if (cost.replacement_cost) out += figure("replacement", payback_words(cost, printable(currency)));
+    return out;
+}
+
 // What is not known has no line.
 std::string figures(const SectionHealth& health, const config::Plant& plant) {
     if (!health.verdict) return {};
@@ -95,8 +114,7 @@ std::string figures(const SectionHealth& health, const config::Plant& plant) {
     if (std::isfinite(day.hours_in_hand.low)) out += figure("hours in hand", hours_in_hand_text(day.hours_in_hand));
     if (day.cause != analytics::CauseKind::none)
         out += figure("likely cause", fmt::format("{} ({:.0f} %)", name_of(day.cause), day.cause_weight * 100.0));
-    if (std::isfinite(health.yearly_cost))
-        out += figure("cost of the leak", fmt::format("{:.0f} {} a year", health.yearly_cost, health.currency));
+    if (health.cost) out += cost_figures(*health.cost, health.currency);
     return out;
 }
 
@@ -150,6 +168,22 @@ std::string history_line(const HistoryRow& row, const config::Plant& plant, cons
                        plain(row.efficiency.value * 100.0, 1), plain(row.excess_lpm, 2));
 }
 
+// What all leaks cost together, and where most of it goes; empty where nothing has a price.
+std::string fleet_cost(const std::vector<SectionHealth>& fleet) {
+    double sum = 0.0;
+    const SectionHealth* dearest = nullptr;
+    for (const SectionHealth& health : fleet) {
+        const double cost = health.cost ? health.cost->per_year.value : analytics::unknown;
+        if (!(cost > 0.0)) continue;
+        sum += cost;
+        if (dearest == nullptr || cost > dearest->cost->per_year.value) dearest = &health;
+    }
+    if (!(sum >= 1.0)) return {};
+    const std::string name = dearest->only_section ? dearest->pump : dearest->pump + "/" + dearest->section;
+    return paragraph("", fmt::format("Leakage above healthy costs {:.0f} {} a year at the usual duty, {:.0f} of it at {}.",
+                                     sum, printable(dearest->currency), dearest->cost->per_year.value, printable(name)));
+}
+
 }  // namespace
 
 std::string health_text(const SectionHealth& health, const config::Plant& plant, const Paper& paper) {
@@ -181,6 +215,7 @@ std::string fleet_text(const std::vector<SectionHealth>& fleet, const config::Pl
         out += paragraph(std::string(13, ' '), health.sentence);
     }
     out += rule_off();
+    out += fleet_cost(fleet);
     out += paragraph("", "Columns: level, pump, leakage ratio with its 80 % range (1 = as new), hours in hand. `slipledger health PUMP` tells more.");
     for (const std::string& caution : cautions()) out += paragraph("! ", caution);
     return out;

@@ -42,6 +42,8 @@ Span changed_by(const ledger::Mark& mark, std::span<const ledger::Event> events,
     return changed;
 }
 
+constexpr std::int32_t before_all_days = -1'000'000;
+
 // Threads: one pass, then gone.
 class PumpPass {
 public:
@@ -50,7 +52,7 @@ public:
              std::vector<ledger::Event> events)
         : reader_(reader), plant_(plant), directory_(directory), pump_(pump), days_(days), pass_(pass), oldest_(oldest),
           events_(std::move(events)), told_(reader.notices(pump.id)),
-          facts_(reader.day_facts(directory.pumps.at(pump.id), pass.first_date - analytics::usual_days,
+          facts_(reader.day_facts(directory.pumps.at(pump.id), first_date_needed() - analytics::usual_days,
                                   pass.last_date + 1)) {}
 
     void run(ledger::AnalysisResult& result) {
@@ -58,6 +60,18 @@ public:
     }
 
 private:
+    // The estimate is led on from a checkpoint that may lie weeks before the pass, over days whose facts count again.
+    std::int32_t first_date_needed() const {
+        std::int32_t first = pass_.first_date;
+        for (const ledger::TrackEntry& track : directory_.tracks) {
+            if (track.pump_name != pump_.id) continue;
+            const auto checkpoint = reader_.checkpoint_before(track.id, pass_.first_date);
+            if (checkpoint) first = std::min(first, checkpoint->date);
+            else if (reader_.last_day(track.id)) first = before_all_days;
+        }
+        return first;
+    }
+
     FactsByDate stored_facts(const std::string& section) const {
         FactsByDate facts;
         for (const ledger::DayFactsRecord& record : facts_)

@@ -26,6 +26,14 @@ using FactsByDate = std::map<std::int32_t, analytics::DayFacts>;
 // Which of speed and temperature readings of the seven days before a date tell; nullopt: there are none yet.
 std::optional<SeenSensors> seen_before(const FactsByDate& facts, std::int32_t date);
 
+// What is usual on a day, as the seven days before it tell.
+analytics::Usual usual_on(const FactsByDate& facts, std::int32_t date, const Stretch& stretch,
+                          const analytics::SectionSpec& spec);
+
+// Which of speed and temperature readings around one summary tell: what counts in the first days, of which no day before
+// tells anything.
+SeenSensors seen_in(const analytics::SectionReadings& readings, const Span& summary);
+
 // One section as a pass sees it; the same for both sides of the pass. Threads: immutable while the pass runs.
 struct SectionView {
     const config::Plant& plant;

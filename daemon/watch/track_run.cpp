@@ -56,6 +56,17 @@ public:
         return std::move(run_);
     }
 
+    std::optional<Replay> replay(const ledger::SummaryRecord& until) {
+        if (next_ == summaries_.size()) return std::nullopt;
+        for (std::int32_t date = first_date(); date < until.date; ++date) take_day(date, until.date);
+        const DaySpan day = view_.days.day(until.date);
+        adopt_inputs(day);
+        analytics::SummaryVerdict verdict;
+        for (; next_ < summaries_.size() && summaries_[next_].start <= until.summary.start; ++next_)
+            verdict = take(summaries_[next_], day);
+        return Replay{std::move(course_), spec(day), verdict, day};
+    }
+
 private:
     void take_up(const RemadeSummaries& remade) {
         const auto checkpoint = reader_.checkpoint_before(track_.id, view_.pass.first_date);
@@ -177,11 +188,12 @@ private:
             run_.result.checkpoints.push_back({date, course_.checkpoint()});
     }
 
-    void take(const Summary& summary, const DaySpan& day) {
+    analytics::SummaryVerdict take(const Summary& summary, const DaySpan& day) {
         if (!run_.began) begin(day, summary.start);
         go_on_to(day, summary.start);
         const analytics::SummaryVerdict verdict = course_.take(summary);
         if (summary.start >= emit_from_) run_.result.summaries.push_back({summary, verdict, day.date});
+        return verdict;
     }
 
     const ledger::Reader& reader_;
@@ -204,6 +216,11 @@ private:
 TrackRun run_track(const ledger::Reader& reader, const ledger::TrackEntry& track, const SectionView& view,
                    const RemadeSummaries& remade) {
     return Running(reader, track, view, remade).run();
+}
+
+std::optional<Replay> replay_track(const ledger::Reader& reader, const ledger::TrackEntry& track,
+                                   const SectionView& view, const ledger::SummaryRecord& until) {
+    return Running(reader, track, view, {}).replay(until);
 }
 
 }  // namespace slipledger::watch

@@ -16,6 +16,13 @@ TEST(Verdict, QuotesAnEightyPercentRange) {
     EXPECT_NEAR(range.high, 1.1367, 5e-5);
 }
 
+// reference: ratio_low_wanted - hand-worked: half way from 1 to 2 is 1.5
+// reference: points_low_wanted - hand-worked: half of 7 is 3.5
+TEST(LowEnd, MustReachHalfWayFromHealthyToTheLimit) {
+    EXPECT_DOUBLE_EQ(ratio_low_wanted(2.0), 1.5);
+    EXPECT_DOUBLE_EQ(points_low_wanted(7.0), 3.5);
+}
+
 // reference: judge_ratio - hand-worked: limit 2 wants a low end above 1.5, limit 1.17 above 1.085, limit 3 above 2
 TEST(Verdict, PassesALimitOnlyWithItsLowEndPastHalfTheWay) {
     EXPECT_EQ(judge_ratio({2.1, 1.6, 2.7}, ratio_limits).beyond, Level::plan);

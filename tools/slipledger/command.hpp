@@ -49,6 +49,7 @@ const config::Section& section_named(const config::Pump& pump, const std::string
 
 void add_fleet(CLI::App& app, Shared& shared);
 void add_health(CLI::App& app, Shared& shared);
+void add_explain(CLI::App& app, Shared& shared);
 void add_history(CLI::App& app, Shared& shared);
 void add_alerts(CLI::App& app, Shared& shared);
 void add_acknowledge(CLI::App& app, Shared& shared);
