@@ -10,6 +10,7 @@
 
 #include "analytics/course.hpp"
 #include "analytics/instant.hpp"
+#include "daemon/report/cause_words.hpp"
 #include "daemon/report/dated_event.hpp"
 #include "daemon/report/episodes.hpp"
 
@@ -50,6 +51,7 @@ struct SectionHealth {
     std::string sentence;
     std::optional<analytics::Basis> basis;
     std::optional<analytics::DayVerdict> verdict;  // of the newest day; none before anything was judged
+    std::vector<CauseWords> causes;  // the heaviest first; empty where nothing asks for one
     double yearly_cost = analytics::unknown;
     std::string currency;
     DataFacts data;

@@ -159,6 +159,8 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
         health.verdict = day;
         health.level = day.level;
         health.reason = day.level == analytics::Level::unjudged ? std::string(name_of(day.reason)) : std::string();
+        health.causes = words_of(day.causes, {pump.type, speaking.track.basis, section.reference.pressure_bar,
+                                              asked.plant.display_units});
         health.yearly_cost = yearly_cost(asked, pump, speaking);
         health.notes = notes_of(pump, section, speaking, health.data);
     }
