@@ -22,7 +22,7 @@ namespace slipledger::analytics {
 
 namespace {
 
-constexpr std::uint32_t checkpoint_version = 0x534c0002;  // raise the low half whenever a field is added or moved
+constexpr std::uint32_t checkpoint_version = 0x534c0003;  // raise the low half whenever a field is added or moved
 constexpr double hours_per_day = 24.0;
 constexpr double quantile_90 = 1.2815515655446004;
 constexpr std::int32_t drift_days_wanted = 7;  // in a row, to establish a drift and to give it up again
