@@ -15,6 +15,7 @@
 #include <vector>
 
 #include "analytics/alarm.hpp"
+#include "analytics/causes.hpp"
 #include "analytics/instant.hpp"
 #include "analytics/section_spec.hpp"
 #include "analytics/summary.hpp"
@@ -47,13 +48,10 @@ enum class UnjudgedReason : std::uint8_t {
     no_basis,        // the sensors fitted give none
     no_temperature,  // the oil's viscosity is unknown: only the raw drain share is watched
     silent,          // only ever laid over by a report: newest reading 24 h older than the plant's newest
+    instrument,      // an instrument is in doubt and holds back the wear alert that rests on it
 };
 
 std::string_view name_of(UnjudgedReason reason);  // "no-data", "learning", ...
-
-enum class CauseKind : std::uint8_t { none, wear, sudden_damage, wear_or_instrument, instrument, oil_or_operation };
-
-std::string_view name_of(CauseKind cause);
 
 // Judgement on one closed summary.
 struct SummaryVerdict {
@@ -99,10 +97,11 @@ struct DayVerdict {
     double leakage_kw = unknown;
     Trend trend;
     HoursInHand hours_in_hand;
-    double step_ratio = unknown;  // of a step found on this day: ratio after over before
-    CauseKind cause = CauseKind::none;
+    double step_ratio = unknown;        // of a step found on this day: ratio after over before
+    CauseKind cause = CauseKind::none;  // the likeliest
     double cause_weight = 0.0;
-    double running_h = 0.0;  // of the day
+    std::vector<RankedCause> causes;  // empty where nothing asks for one
+    double running_h = 0.0;           // of the day
     double judged_h = 0.0;
     double life_running_h = 0.0;  // since the life began, as far as watched
     double life_judged_h = 0.0;
@@ -131,6 +130,9 @@ public:
     // Facts of the same life changed (oil, setting, sensor): the estimate goes on, a change at this moment is
     // attributed to it first.
     void change_facts(Instant at, const SectionSpec& spec);
+
+    // What the section's other basis said at the end of the day before, where both are fitted. Evidence on causes.
+    void hear_other_basis(const DayVerdict& other);
 
     SummaryVerdict take(const Summary& summary);
     DayVerdict quote(const DaySpan& day) const;

@@ -1,5 +1,5 @@
-// From estimates to words: which limit an estimate passes, what a section may be told at most on its basis, why it has
-// no level, and the simplest cause that fits. Pure decisions on values; the course of a section calls them in order.
+// From estimates to words: which limit an estimate passes, what a section may be told at most on its basis, and why it
+// has no level. Pure decisions on values; the course of a section calls them in order.
 #pragma once
 
 #include "analytics/alarm.hpp"
@@ -56,23 +56,5 @@ struct Knowledge {
 // The first reason that holds, in the order: no basis, shared drain, no data, learning, seldom judged (under 10 %).
 // Source: design.md, 2.
 UnjudgedReason unjudged_reason(const Knowledge& knowledge);
-
-// What speaks for one cause or another.
-struct CauseEvidence {
-    Level level = Level::unjudged;
-    bool step = false;
-    bool explained = false;  // the step, by a change of oil, sensor, setting or range
-    bool instrument_suspect = false;
-    bool scales_with_leakage = false;  // excess grows with healthy leakage, as wear does and a meter's zero does not
-};
-
-struct Cause {
-    CauseKind kind = CauseKind::none;
-    double weight = 0.0;
-};
-
-// The simplest cause that fits; `none` at sound or unjudged without a step. Weights are first guesses (0.7 of a plain
-// sign, 0.5 where two cannot be told apart): the ranking of method.md, 7 is wider. Source: method.md, 7.
-Cause simplest_cause(const CauseEvidence& evidence);
 
 }  // namespace slipledger::analytics

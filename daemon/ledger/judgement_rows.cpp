@@ -2,6 +2,7 @@
 
 #include <algorithm>
 
+#include "daemon/ledger/cause_text.hpp"
 #include "daemon/ledger/statement.hpp"
 
 namespace slipledger::ledger {
@@ -15,7 +16,9 @@ constexpr const char* summary_columns =
     "drain_share, highest_temperature_c, highest_case_bar, lowest_inlet_bar, mean_pressure_bar, level, "
     "reason, leakage_ratio, leakage_ratio_low, leakage_ratio_high, filtered_ratio, filtered_ratio_low, "
     "filtered_ratio_high, efficiency, efficiency_low, efficiency_high, leakage_lpm, excess_lpm, "
-    "leakage_kw, outside_coverage";
+    "leakage_kw, outside_coverage, mean_flow_lpm, mean_speed_rpm, mean_temperature_c, lowest_flow_lpm, "
+    "highest_flow_lpm, lowest_pressure_bar, highest_pressure_bar, lowest_speed_rpm, highest_speed_rpm, "
+    "lowest_running_c, highest_running_c";
 
 constexpr const char* moments_columns =
     "track, start, regime, count, leakage_lpm, f1, f2, f3, cov_yy, cov_1y, cov_11, cov_2y, cov_21, "
@@ -29,7 +32,7 @@ constexpr const char* day_columns =
     "efficiency_at_rated, clearance_growth_percent, leakage_lpm, excess_lpm, leakage_kw, "
     "trend_per_1000_h, trend_low, trend_high, trend_established, onset, hours_low, hours_mid, hours_high, "
     "hours_limit, step_ratio, cause, cause_weight, running_h, judged_h, life_running_h, life_judged_h, "
-    "learning_h_left, share_judged_30d, slip_coefficient, zero_lpm";
+    "learning_h_left, share_judged_30d, slip_coefficient, zero_lpm, causes";
 
 constexpr const char* day_facts_columns =
     "pump, section, date, outlet_pressure_s, shaft_speed_s, case_drain_flow_s, fluid_temperature_s, "
@@ -69,6 +72,9 @@ void summary_fields(Io& io, Record& record) {
     ranged_fields(io, verdict.filtered_ratio);
     ranged_fields(io, verdict.efficiency);
     io & verdict.leakage_lpm & verdict.excess_lpm & verdict.leakage_kw & verdict.outside_coverage;
+    io & summary.mean_flow_lpm & summary.mean_speed_rpm & summary.mean_temperature_c;
+    for (auto* extent : {&summary.flow_lpm, &summary.pressure_bar, &summary.speed_rpm, &summary.temperature_c})
+        io & extent->low & extent->high;
 }
 
 template <typename Io, typename Moments>
@@ -94,6 +100,15 @@ void rule_name_field(ColumnReader& io, std::string_view& name) {
     name = lasting_rule_name(text);
 }
 
+void causes_field(Binder& io, const std::vector<analytics::RankedCause>& causes) {
+    io << std::string_view(text_of(causes));  // copied: the text ends here
+}
+void causes_field(ColumnReader& io, std::vector<analytics::RankedCause>& causes) {
+    std::string text;
+    io >> text;
+    causes = causes_of(text);
+}
+
 template <typename Io, typename Record>
 void day_fields(Io& io, Record& record) {
     auto& verdict = record.verdict;
@@ -110,6 +125,7 @@ void day_fields(Io& io, Record& record) {
     io & verdict.step_ratio & verdict.cause & verdict.cause_weight & verdict.running_h & verdict.judged_h;
     io & verdict.life_running_h & verdict.life_judged_h & verdict.learning_h_left & verdict.share_judged_30d;
     io & verdict.slip_coefficient & verdict.zero_lpm;
+    causes_field(io, verdict.causes);
 }
 
 template <typename Io, typename Record>

@@ -10,6 +10,7 @@
 
 #include "analytics/course.hpp"
 #include "analytics/instant.hpp"
+#include "daemon/report/cause_words.hpp"
 #include "daemon/report/dated_event.hpp"
 #include "daemon/report/episodes.hpp"
 #include "daemon/report/leak_cost.hpp"
@@ -51,6 +52,7 @@ struct SectionHealth {
     std::string sentence;
     std::optional<analytics::Basis> basis;
     std::optional<analytics::DayVerdict> verdict;  // of the newest day; none before anything was judged
+    std::vector<CauseWords> causes;  // the heaviest first; empty where nothing asks for one
     std::optional<LeakCost> cost;  // of leakage above healthy, at the usual duty; none: unjudged, or no prices given
     std::string currency;
     DataFacts data;

@@ -135,6 +135,8 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
         health.level = day.level;
         health.reason = day.level == analytics::Level::unjudged ? std::string(name_of(day.reason)) : std::string();
         health.cost = query_cost(asked.reader, asked.plant, pump, section, speaking.track, day);
+        health.causes = words_of(day.causes, {pump.type, speaking.track.basis, section.reference.pressure_bar,
+                                              asked.plant.display_units});
         health.notes = notes_of(pump, section, speaking, health.data);
     }
     if (asked.plant.economics) health.currency = asked.plant.economics->currency;

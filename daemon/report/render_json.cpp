@@ -42,14 +42,15 @@ ordered_json trend_json(const analytics::Trend& trend) {
             {"onset", time_or_null(trend.onset)}};
 }
 
-// One cause and its weight; what speaks for and against it is told by the notes until causes are ranked.
 ordered_json causes_json(const SectionHealth& health) {
     ordered_json causes = ordered_json::array();
-    if (health.verdict && health.verdict->cause != analytics::CauseKind::none)
-        causes.push_back({{"cause", name_of(health.verdict->cause)},
-                          {"weight", number(health.verdict->cause_weight)},
-                          {"for", ordered_json::array()},
-                          {"against", ordered_json::array()}});
+    for (const CauseWords& cause : health.causes)
+        causes.push_back({{"cause", name_of(cause.kind)},
+                          {"weight", number(cause.weight)},
+                          {"title", cause.title},
+                          {"for", cause.in_favour},
+                          {"against", cause.against},
+                          {"settles", cause.settles}});
     return causes;
 }
 

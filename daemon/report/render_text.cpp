@@ -112,9 +112,23 @@ std::string figures(const SectionHealth& health, const config::Plant& plant) {
     if (std::isfinite(day.trend.per_1000_h.value)) out += figure("trend", trend_text(day.trend));
     if (day.trend.onset) out += figure("since", local_date(*day.trend.onset, plant.time_zone));
     if (std::isfinite(day.hours_in_hand.low)) out += figure("hours in hand", hours_in_hand_text(day.hours_in_hand));
-    if (day.cause != analytics::CauseKind::none)
-        out += figure("likely cause", fmt::format("{} ({:.0f} %)", name_of(day.cause), day.cause_weight * 100.0));
     if (health.cost) out += cost_figures(*health.cost, health.currency);
+    return out;
+}
+
+// The first three; what would settle the matter stands under the first.
+std::string causes_text(const SectionHealth& health) {
+    constexpr std::size_t most = 3;
+    constexpr double worth_a_line = 0.05;
+    std::string out;
+    for (std::size_t i = 0; i < std::min(most, health.causes.size()); ++i) {
+        const CauseWords& cause = health.causes[i];
+        if (i > 0 && cause.weight < worth_a_line) break;
+        out += figure(i == 0 ? "likely cause" : "or else", fmt::format("{}, {:.0f} %", cause.title, cause.weight * 100.0));
+        for (const std::string& sentence : cause.in_favour) out += paragraph("    for      ", sentence);
+        for (const std::string& sentence : cause.against) out += paragraph("    against  ", sentence);
+        if (i == 0) out += paragraph("    settle   ", cause.settles);
+    }
     return out;
 }
 
@@ -191,7 +205,7 @@ std::string health_text(const SectionHealth& health, const config::Plant& plant,
     const std::string lead = level_word(health.level, paper);
     const std::string body = paragraph(std::string(14, ' '), health.sentence);
     out += lead + "  " + body.substr(14);
-    out += '\n' + figures(health, plant) + data_text(health);
+    out += '\n' + figures(health, plant) + causes_text(health) + data_text(health);
     for (const std::string& note : health.notes) out += paragraph("  note: ", note);
     for (const Episode& alarm : health.alarms) out += "  alarm: " + alarm.rule + ", " + alarm.state + "\n";
     return out + event_lines(health, plant);

@@ -50,23 +50,23 @@ struct WorkingFacts {
     const config::Pump& pump;        // as the plant file tells of it today
     const config::Section& section;  // the same
     analytics::Basis basis = analytics::Basis::case_drain;
-    config::Fluid oil;            // in the reservoir at that time
-    std::string compared_with;    // "when new", "when watching began (2026-01-05)"
-    std::string remark;           // on how the time was chosen, or what is not as usual; may be empty
-    std::string nothing_because;  // there is no summary at all to show; empty otherwise
+    config::Fluid oil{};            // in the reservoir at that time
+    std::string compared_with{};    // "when new", "when watching began (2026-01-05)"
+    std::string remark{};           // on how the time was chosen, or what is not as usual; may be empty
+    std::string nothing_because{};  // there is no summary at all to show; empty otherwise
 
-    std::optional<ledger::SummaryRecord> record;  // everything below is about it
-    analytics::SectionSpec spec;                  // that held then
-    std::optional<PointFacts> point;              // none: the raw readings are gone
-    std::vector<analytics::JudgedPoint> points;   // all of the summary's
-    std::optional<analytics::Course> course;      // at the summary's end
-    analytics::DaySpan day;
-    std::optional<analytics::DayVerdict> so_far;  // what it says of the day up to then
-    std::vector<ledger::DayRecord> judged_days;   // the last two finished ones that decided the level; ascending
-    std::optional<ledger::DayRecord> day_record;  // of the summary's day
+    std::optional<ledger::SummaryRecord> record{};  // everything below is about it
+    analytics::SectionSpec spec{};                  // that held then
+    std::optional<PointFacts> point{};              // none: the raw readings are gone
+    std::vector<analytics::JudgedPoint> points{};   // all of the summary's
+    std::optional<analytics::Course> course{};      // at the summary's end
+    analytics::DaySpan day{};
+    std::optional<analytics::DayVerdict> so_far{};  // what it says of the day up to then
+    std::vector<ledger::DayRecord> judged_days{};   // the last two finished ones that decided the level; ascending
+    std::optional<ledger::DayRecord> day_record{};  // of the summary's day
     std::vector<analytics::AlarmChange>
-        changes;  // of the life up to the summary's end, or its day's where that is over
-    std::optional<LeakCost> cost;
+        changes{};  // of the life up to the summary's end, or its day's where that is over
+    std::optional<LeakCost> cost{};
 };
 
 Working working_of(const WorkingFacts& facts);

@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <limits>
 
+#include "analytics/units.hpp"
 #include "daemon/report/speaking_track.hpp"
 #include "daemon/report/when.hpp"
 #include "daemon/watch/section_readings.hpp"

@@ -75,18 +75,5 @@ TEST(Verdict, SaysWhyThereIsNoLevel) {
     EXPECT_EQ(name_of(UnjudgedReason::seldom_judged), "seldom-judged");
 }
 
-// reference: simplest_cause - hand-worked: one sign at a time
-TEST(Verdict, NamesTheSimplestCauseThatFits) {
-    EXPECT_EQ(simplest_cause({.level = Level::sound}).kind, CauseKind::none);
-    EXPECT_EQ(simplest_cause({.level = Level::plan, .scales_with_leakage = true}).kind, CauseKind::wear);
-    EXPECT_EQ(simplest_cause({.level = Level::plan}).kind, CauseKind::wear_or_instrument);
-    EXPECT_EQ(simplest_cause({.level = Level::watch, .step = true}).kind, CauseKind::sudden_damage);
-    EXPECT_EQ(simplest_cause({.level = Level::sound, .step = true, .explained = true}).kind,
-              CauseKind::oil_or_operation);
-    EXPECT_EQ(simplest_cause({.level = Level::act, .step = true, .instrument_suspect = true}).kind,
-              CauseKind::instrument);
-    EXPECT_EQ(name_of(CauseKind::wear_or_instrument), "wear-or-instrument");
-}
-
 }  // namespace
 }  // namespace slipledger::analytics

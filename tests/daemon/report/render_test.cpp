@@ -2,6 +2,8 @@
 #include <gmock/gmock.h>
 #include <gtest/gtest.h>
 
+#include <fmt/format.h>
+
 #include <nlohmann/json.hpp>
 #include <sstream>
 
@@ -72,6 +74,24 @@ TEST(HealthText, FitsEightyColumnsAndCarriesTheCautions) {
     for (std::string line; std::getline(lines, line);) EXPECT_LE(line.size(), page_width) << line;
     for (const std::string& caution : cautions()) EXPECT_THAT(text, testing::HasSubstr(caution.substr(0, 30)));
     EXPECT_THAT(text, testing::HasSubstr("**  plan"));
+}
+
+TEST(HealthText, ShowsTheFirstThreeCausesWithTheirEvidence) {
+    SectionHealth health = worn_section("A");
+    for (const double weight : {0.5, 0.3, 0.15, 0.05})
+        health.causes.push_back({analytics::CauseKind::wear, weight, fmt::format("cause of {}", weight), {"It leaks."},
+                                 {"It does not."}, "Look."});
+    const std::string text = health_text(health, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("likely cause            cause of 0.5, 50 %\n    for      It leaks.\n"
+                                         "    against  It does not.\n    settle   Look.\n"));
+    EXPECT_THAT(text, testing::HasSubstr("cause of 0.15, 15 %"));
+    EXPECT_THAT(text, testing::Not(testing::HasSubstr("cause of 0.05")));
+    const auto json = to_json(health)["causes"];
+    ASSERT_EQ(json.size(), 4U);
+    EXPECT_EQ(json[0]["cause"], "wear");
+    EXPECT_EQ(json[0]["for"][0], "It leaks.");
+    EXPECT_EQ(json[0]["against"][0], "It does not.");
+    EXPECT_EQ(json[0]["settles"], "Look.");
 }
 
 TEST(HealthText, TellsTheNewestEventsAndMakesThemPrintable) {

@@ -79,6 +79,27 @@ TEST(Sentence, DoesNotOrderAPartWhereAnInstrumentIsInDoubt) {
     EXPECT_EQ(what_to_do(facts), "Wear or instrument, not yet separable: check the flow meter with a reference test.");
 }
 
+TEST(Sentence, SendsToTheMeterFirstWhereWearAndInstrumentAreNotSeparable) {
+    SentenceFacts facts = worn();
+    facts.verdict.causes = {{CauseKind::wear, 0.8, {}, {}}};
+    EXPECT_EQ(what_to_do(facts), "Wear or instrument, not yet separable: check the flow meter with a reference test; if it "
+                                 "agrees, order a rotating group.");
+}
+
+TEST(Sentence, NamesTheInstrumentThatHoldsTheVerdictBack) {
+    SentenceFacts facts = unjudged(UnjudgedReason::instrument);
+    facts.verdict.cause = CauseKind::sensor_unit;
+    facts.verdict.causes = {{CauseKind::sensor_unit, 0.9, {}, {}}};
+    EXPECT_EQ(sentence(facts), "The pump is not judged: an instrument is in doubt, and what rests on it is held back. Check "
+                               "the instruments first: instrument read in another unit.");
+}
+
+TEST(Sentence, SendsToTheDrainLineBeforeAnythingElse) {
+    SentenceFacts facts = worn();
+    facts.verdict.cause = CauseKind::blocked_drain;
+    EXPECT_EQ(what_to_do(facts), "Check the drain line and its filter first.");
+}
+
 TEST(Sentence, BeyondTheLimitSaysSoAndSendsToTheShelf) {
     SentenceFacts facts = worn();
     facts.type = analytics::PumpType::vane;

@@ -89,7 +89,9 @@ TEST_F(ShownWorking, DoesSoAcrossAReplacementAndAChangeOfOil) {
     for (std::size_t i = 0; i < all.size(); i += 11) {
         const report::WorkingFacts facts = ask({.at = all[i].summary.start, .basis = {}});
         const double ratio = all[i].verdict.filtered_ratio.value;
-        if (std::isfinite(ratio)) EXPECT_EQ(std::exp(facts.course->filter().wear().ln), ratio);
+        if (std::isfinite(ratio)) {
+            EXPECT_EQ(std::exp(facts.course->filter().wear().ln), ratio);
+        }
         EXPECT_EQ(facts.record->summary.life, all[i].summary.start < demo_begin + 24h * 9 + 90min ? 1 : 2);
         EXPECT_EQ(facts.spec.displacement_cm3, facts.record->summary.life == 1 ? 71.0 : 75.0);
     }
