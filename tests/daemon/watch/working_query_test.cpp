@@ -16,7 +16,7 @@ namespace {
 
 using namespace std::chrono_literals;
 using analytics::Basis;
-using testing::HasSubstr;
+using ::testing::HasSubstr;
 
 class ShownWorking : public ::testing::Test {
 protected:
