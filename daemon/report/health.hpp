@@ -10,8 +10,10 @@
 
 #include "analytics/course.hpp"
 #include "analytics/instant.hpp"
+#include "daemon/report/cause_words.hpp"
 #include "daemon/report/dated_event.hpp"
 #include "daemon/report/episodes.hpp"
+#include "daemon/report/leak_cost.hpp"
 
 namespace slipledger::report {
 
@@ -23,7 +25,8 @@ struct LifeFacts {
     std::int32_t number = 1;
     std::optional<Instant> started;  // fitting, or when watching began
     double running_hours = 0.0;
-    std::string baseline;            // what the ratio is compared with: "when new", "when watching began"
+    std::string baseline;       // what its healthy leakage rests on: "maker-test", "own, from new" ...
+    std::string compared_with;  // the same in a sentence: "what it did when new"
 };
 
 // How many rows went where. Threads: a value, share freely.
@@ -50,7 +53,8 @@ struct SectionHealth {
     std::string sentence;
     std::optional<analytics::Basis> basis;
     std::optional<analytics::DayVerdict> verdict;  // of the newest day; none before anything was judged
-    double yearly_cost = analytics::unknown;
+    std::vector<CauseWords> causes;  // the heaviest first; empty where nothing asks for one
+    std::optional<LeakCost> cost;  // of leakage above healthy, at the usual duty; none: unjudged, or no prices given
     std::string currency;
     DataFacts data;
     LifeFacts life;
@@ -67,6 +71,12 @@ struct PumpHealth {
     // The section whose level is the most urgent; the first of equals.
     const SectionHealth& most_urgent() const;
 };
+
+// A replacement that nobody told, where the newest judgement says that it looks like one.
+analytics::LikelyReplacement likely_replacement(const SectionHealth& health);
+
+// The command that tells of it.
+std::string replaced_command(const SectionHealth& health, Instant at);
 
 // What stands under every report and page.
 const std::vector<std::string>& cautions();

@@ -4,6 +4,7 @@
 #include <cmath>
 #include <limits>
 #include <set>
+#include <span>
 #include <tuple>
 
 #include "daemon/ledger/lives.hpp"
@@ -16,9 +17,7 @@ namespace slipledger::report {
 
 namespace {
 
-constexpr double hours_a_year = 8766.0;
 constexpr std::size_t most_events = 20;
-constexpr std::int32_t duty_days = 28;  // usual duty is taken from so many days
 
 // What a report asks for once and every section of the pump uses.
 struct Asked {
@@ -54,45 +53,27 @@ DataFacts data_facts(const Asked& asked, const config::Pump& pump, const config:
 }
 
 LifeFacts life_facts(const Asked& asked, const config::Pump& pump, const config::Section& section,
-                     const SpeakingTrack& speaking) {
+                     const SpeakingTrack& speaking, std::span<const ledger::Event> events) {
     LifeFacts facts;
     if (speaking.newest_day) {
         facts.number = speaking.newest_day->verdict.life;
         facts.running_hours = speaking.newest_day->verdict.life_running_h;
     }
-    const std::vector<ledger::Event> events = asked.reader.events(pump.id);
     const std::optional<Instant> oldest = asked.reader.oldest(asked.directory.pumps.at(pump.id));
+    const std::vector<ledger::FactsFrom> told = ledger::facts_of(events);
+    bool from_new = false;
     for (const ledger::Life& life : ledger::lives_of(events, section.id)) {
         if (life.number != facts.number) continue;
         facts.started = life.since ? life.since : oldest;
-        facts.baseline = ledger::watched_from_new(life, ledger::facts_of(events), oldest) ? "when new" : "when watching began";
+        from_new = ledger::watched_from_new(life, told, oldest);
     }
-    if (facts.baseline == "when watching began" && facts.started)
-        facts.baseline += " (" + local_date(*facts.started, asked.plant.time_zone) + ")";
+    const std::string began = facts.started ? local_date(*facts.started, asked.plant.time_zone) : std::string("not yet");
+    const auto unwatched = from_new ? analytics::BaselineKind::from_new : analytics::BaselineKind::watching_began;
+    const auto kind = speaking.newest_day ? speaking.newest_day->verdict.baseline : unwatched;
+    facts.baseline = std::string(name_of(kind));
+    if (kind == analytics::BaselineKind::watching_began) facts.baseline += " (" + began + ")";
+    facts.compared_with = compared_with(kind, from_new, began);
     return facts;
-}
-
-// Running hours a year: planned duty, else as the newest weeks went.
-double yearly_hours(const Asked& asked, const SpeakingTrack& speaking) {
-    if (asked.plant.duty_h_per_week) return *asked.plant.duty_h_per_week / 7.0 * (hours_a_year / 24.0);
-    const std::int32_t to = speaking.newest_day->verdict.day.date + 1;
-    const auto days = asked.reader.days(speaking.track.id, to - duty_days, to);
-    double running_h = 0.0;
-    for (const ledger::DayRecord& day : days) running_h += day.verdict.running_h;
-    return days.empty() ? analytics::unknown
-                        : running_h / static_cast<double>(days.size()) * (hours_a_year / 24.0);
-}
-
-// Power lost to leakage above healthy, on pumps whose stroke makes up for it. On a fixed pump leakage costs flow, not
-// shaft power, so no money is shown (method: design of the project, "Money").
-double yearly_cost(const Asked& asked, const config::Pump& pump, const SpeakingTrack& speaking) {
-    if (!asked.plant.economics || pump.control == analytics::Control::fixed) return analytics::unknown;
-    const analytics::DayVerdict& day = speaking.newest_day->verdict;
-    if (!(day.leakage_lpm > 0.0)) return analytics::unknown;
-    const double excess_kw = day.leakage_kw * (day.excess_lpm / day.leakage_lpm);
-    const config::Economics& economics = *asked.plant.economics;
-    return std::max(0.0, excess_kw) / economics.motor_efficiency * yearly_hours(asked, speaking) *
-           economics.energy_price_per_kwh;
 }
 
 std::vector<std::string> notes_of(const config::Pump& pump, const config::Section& section,
@@ -124,7 +105,7 @@ SentenceFacts sentence_facts(const Asked& asked, const config::Pump& pump, const
     facts.section = section.id;
     facts.only_section = health.only_section;
     facts.basis = health.basis.value_or(analytics::Basis::case_drain);
-    facts.compared_with = health.life.baseline;
+    facts.compared_with = health.life.compared_with;
     facts.temperature_known = !health.data.set_aside.contains(std::string(name_of(analytics::Standing::no_temperature))) ||
                               health.data.used > 0;
     facts.least_judged_h = section.baseline.min_h;
@@ -151,7 +132,8 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
 
     const SpeakingTrack speaking = speaking_track(asked.reader, asked.directory, pump.id, section.id);
     health.data = data_facts(asked, pump, section, speaking);
-    health.life = life_facts(asked, pump, section, speaking);
+    const std::vector<ledger::Event> events = ledger::events_concerning(pump, asked.reader.events(pump.id));
+    health.life = life_facts(asked, pump, section, speaking, events);
     health.reason = std::string(name_of(analytics::UnjudgedReason::no_data));
     if (speaking.newest_day) {
         const analytics::DayVerdict& day = speaking.newest_day->verdict;
@@ -159,7 +141,9 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
         health.verdict = day;
         health.level = day.level;
         health.reason = day.level == analytics::Level::unjudged ? std::string(name_of(day.reason)) : std::string();
-        health.yearly_cost = yearly_cost(asked, pump, speaking);
+        health.cost = query_cost(asked.reader, asked.plant, pump, section, speaking.track, day);
+        health.causes = words_of(day.causes, {pump.type, speaking.track.basis, section.reference.pressure_bar,
+                                              asked.plant.display_units});
         health.notes = notes_of(pump, section, speaking, health.data);
     }
     if (asked.plant.economics) health.currency = asked.plant.economics->currency;
@@ -170,7 +154,7 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
     }
     health.sentence = sentence(sentence_facts(asked, pump, section, health, silent));
     health.alarms = query_alarms(asked.reader, asked.directory, pump.id, section.id);
-    health.events = dated_events(asked.reader.events(pump.id), section.id, most_events);
+    health.events = dated_events(events, section.id, most_events);
     std::erase_if(health.alarms, [](const Episode& episode) { return episode.cleared.has_value(); });
     std::stable_sort(health.alarms.begin(), health.alarms.end(),
                      [](const Episode& a, const Episode& b) { return a.level > b.level; });

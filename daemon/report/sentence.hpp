@@ -16,7 +16,7 @@ struct SentenceFacts {
     std::string section = "A";
     bool only_section = true;          // then the pump is spoken of, not its section
     analytics::Basis basis = analytics::Basis::case_drain;
-    std::string compared_with = "when new";  // or "when watching began (2026-01-05)"
+    std::string compared_with = "what it did when new";  // see compared_with()
     bool temperature_known = true;
     double least_judged_h = 50.0;      // judged running hours the baseline wants
     double act_ratio = 3.0;            // limits of the level act; NaN: none
@@ -28,6 +28,10 @@ struct SentenceFacts {
 };
 
 std::string sentence(const SentenceFacts& facts);
+
+// What the ratio is a multiple of: "what it did when new", "what it did when watching began (2026-01-05)", "what its maker
+// measured when it was new" ... `from_new`: watched since it was new; `began`: the local date on which watching began.
+std::string compared_with(analytics::BaselineKind baseline, bool from_new, const std::string& began);
 
 // The last sentence of it alone: the one thing to do now.
 std::string what_to_do(const SentenceFacts& facts);

@@ -2,6 +2,8 @@
 #include <gmock/gmock.h>
 #include <gtest/gtest.h>
 
+#include <fmt/format.h>
+
 #include <nlohmann/json.hpp>
 #include <sstream>
 
@@ -47,7 +49,8 @@ TEST(HealthJson, HasEveryFieldOfTheContract) {
         EXPECT_TRUE(json["volumetric_efficiency"].contains(key)) << key;
     for (const char* key : {"low", "mid", "high", "limit"}) EXPECT_TRUE(json["hours_in_hand"].contains(key)) << key;
     for (const char* key : {"readings", "used", "disputed", "set_aside"}) EXPECT_TRUE(json["data"].contains(key)) << key;
-    for (const char* key : {"number", "started", "running_hours", "baseline"})
+    for (const char* key : {"number", "started", "running_hours", "baseline", "compared_with", "events",
+                            "unrecorded_replacement"})
         EXPECT_TRUE(json["life"].contains(key)) << key;
 }
 
@@ -74,6 +77,24 @@ TEST(HealthText, FitsEightyColumnsAndCarriesTheCautions) {
     EXPECT_THAT(text, testing::HasSubstr("**  plan"));
 }
 
+TEST(HealthText, ShowsTheFirstThreeCausesWithTheirEvidence) {
+    SectionHealth health = worn_section("A");
+    for (const double weight : {0.5, 0.3, 0.15, 0.05})
+        health.causes.push_back({analytics::CauseKind::wear, weight, fmt::format("cause of {}", weight), {"It leaks."},
+                                 {"It does not."}, "Look."});
+    const std::string text = health_text(health, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("likely cause            cause of 0.5, 50 %\n    for      It leaks.\n"
+                                         "    against  It does not.\n    settle   Look.\n"));
+    EXPECT_THAT(text, testing::HasSubstr("cause of 0.15, 15 %"));
+    EXPECT_THAT(text, testing::Not(testing::HasSubstr("cause of 0.05")));
+    const auto json = to_json(health)["causes"];
+    ASSERT_EQ(json.size(), 4U);
+    EXPECT_EQ(json[0]["cause"], "wear");
+    EXPECT_EQ(json[0]["for"][0], "It leaks.");
+    EXPECT_EQ(json[0]["against"][0], "It does not.");
+    EXPECT_EQ(json[0]["settles"], "Look.");
+}
+
 TEST(HealthText, TellsTheNewestEventsAndMakesThemPrintable) {
     SectionHealth health = worn_section("A");
     health.events.assign(7, {analytics::Instant{} + std::chrono::hours(24), "note", "", "fitter", "strainer\033[2J cleaned"});
@@ -81,6 +102,45 @@ TEST(HealthText, TellsTheNewestEventsAndMakesThemPrintable) {
     EXPECT_THAT(text, testing::HasSubstr("  1970-01-02  note, by fitter: strainer?[2J cleaned\n"));
     EXPECT_THAT(text, testing::Not(testing::HasSubstr("\033")));
     EXPECT_EQ(to_json(health)["events"].size(), 7U);
+}
+
+TEST(Health, OffersAReplacementThatNobodyTold) {
+    SectionHealth health = worn_section("A");
+    EXPECT_TRUE(to_json(health)["life"]["unrecorded_replacement"].is_null());
+    const analytics::Instant at = analytics::Instant{} + std::chrono::hours(24 * 365);
+    health.verdict->replacement = {at, 1.93, 1.02};
+    const std::string text = health_text(health, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("Looks like a replacement on 1971-01-01: the ratio fell from 1.9 to 1.0."));
+    EXPECT_THAT(text, testing::HasSubstr("slipledger replaced press-2 --section A --at 1971-01-01T00:00:00Z --by NAME"));
+    const auto json = to_json(health)["life"]["unrecorded_replacement"];
+    EXPECT_EQ(json["at"], "1971-01-01T00:00:00Z");
+    EXPECT_EQ(json["ratio_before"], 1.93);
+    EXPECT_EQ(json["if_so"], "slipledger replaced press-2 --section A --at 1971-01-01T00:00:00Z --by NAME");
+}
+
+TEST(HealthJson, ListsTheEventsOfTheLifeInService) {
+    SectionHealth health = worn_section("A");
+    const auto day = [](int n) { return analytics::Instant{} + std::chrono::hours(24 * n); };
+    health.events = {{day(30), "oil-changed", "", "fitter", "VG 32, VI 150"}, {day(3), "note", "", "fitter", "of the life before"}};
+    health.life.started = day(10);
+    const auto json = to_json(health);
+    EXPECT_EQ(json["events"].size(), 2U);
+    ASSERT_EQ(json["life"]["events"].size(), 1U);
+    EXPECT_EQ(json["life"]["events"][0]["text"], "VG 32, VI 150");
+}
+
+TEST(HistoryText, DrawsEventsBetweenTheDays) {
+    HistoryRow day;
+    day.section = "A";
+    day.level = Level::sound;
+    HistoryRow changed = day;
+    changed.time = analytics::Instant{} + std::chrono::hours(24);
+    changed.stood_still = true;
+    changed.events = {{changed.time + std::chrono::hours(7), "oil-changed", "", "fitter", "VG 32, VI 150, in press-tank"}};
+    const std::string text = history_text({day, changed, day}, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("1970-01-02 07:00 - oil-changed, by fitter: VG 32, VI 150, in press-tank\n"));
+    EXPECT_EQ(to_json(std::vector{day, changed})[1]["events"][0]["kind"], "oil-changed");
+    EXPECT_FALSE(to_json(std::vector{day, changed})[0].contains("events"));
 }
 
 TEST(AlertsText, SaysWhoAcknowledgedAndWhy) {

@@ -35,8 +35,20 @@ TEST(Sentence, OfAWornSectionIsWhatAnEngineerWouldSay) {
 
 TEST(Sentence, NamesTheDateWhereWatchingBeganOnAUsedPump) {
     SentenceFacts facts = worn();
-    facts.compared_with = "when watching began (2026-01-05)";
+    facts.compared_with = compared_with(analytics::BaselineKind::watching_began, false, "2026-01-05");
     EXPECT_NE(sentence(facts).find("what it did when watching began (2026-01-05),"), std::string::npos);
+}
+
+TEST(Sentence, SaysWhatElseItIsComparedWith) {
+    using analytics::BaselineKind;
+    EXPECT_EQ(compared_with(BaselineKind::from_new, true, ""), "what it did when new");
+    EXPECT_EQ(compared_with(BaselineKind::maker_test, true, ""), "what it did when new") << "watched from new, it says so itself";
+    EXPECT_EQ(compared_with(BaselineKind::maker_test, false, ""), "what its maker measured when it was new");
+    EXPECT_EQ(compared_with(BaselineKind::reference_test, false, ""), "what a reference test showed when it was as new");
+    SentenceFacts facts = worn();
+    facts.compared_with = compared_with(BaselineKind::sisters, false, "2026-01-05");
+    EXPECT_NE(sentence(facts).find("leaks 2.1 times (1.9 to 2.3) what its sisters do when healthy, at the same"),
+              std::string::npos);
 }
 
 TEST(Sentence, OfASoundPumpClaimsNoTrend) {
@@ -77,6 +89,27 @@ TEST(Sentence, DoesNotOrderAPartWhereAnInstrumentIsInDoubt) {
     facts.verdict.cause = CauseKind::wear_or_instrument;
     EXPECT_EQ(sentence(facts).find("Order"), std::string::npos);
     EXPECT_EQ(what_to_do(facts), "Wear or instrument, not yet separable: check the flow meter with a reference test.");
+}
+
+TEST(Sentence, SendsToTheMeterFirstWhereWearAndInstrumentAreNotSeparable) {
+    SentenceFacts facts = worn();
+    facts.verdict.causes = {{CauseKind::wear, 0.8, {}, {}}};
+    EXPECT_EQ(what_to_do(facts), "Wear or instrument, not yet separable: check the flow meter with a reference test; if it "
+                                 "agrees, order a rotating group.");
+}
+
+TEST(Sentence, NamesTheInstrumentThatHoldsTheVerdictBack) {
+    SentenceFacts facts = unjudged(UnjudgedReason::instrument);
+    facts.verdict.cause = CauseKind::sensor_unit;
+    facts.verdict.causes = {{CauseKind::sensor_unit, 0.9, {}, {}}};
+    EXPECT_EQ(sentence(facts), "The pump is not judged: an instrument is in doubt, and what rests on it is held back. Check "
+                               "the instruments first: instrument read in another unit.");
+}
+
+TEST(Sentence, SendsToTheDrainLineBeforeAnythingElse) {
+    SentenceFacts facts = worn();
+    facts.verdict.cause = CauseKind::blocked_drain;
+    EXPECT_EQ(what_to_do(facts), "Check the drain line and its filter first.");
 }
 
 TEST(Sentence, BeyondTheLimitSaysSoAndSendsToTheShelf) {
