@@ -1,5 +1,7 @@
 #include "analytics/alarm.hpp"
 
+#include <algorithm>
+
 namespace slipledger::analytics {
 
 namespace {
@@ -79,6 +81,28 @@ Level AlarmState::level() const {
     for (std::size_t i = latches_.size(); i-- > 0;)
         if (latches_[i].on) return raised_levels[i];
     return Level::unjudged;
+}
+
+std::optional<AlarmChange> HeldAlarm::judge(Rule rule, const RuleJudgement& judgement, const Ladder& ladder,
+                                            const RuleTiming& timing, Instant at, bool held) {
+    alarm_.judge(rule, judgement, ladder, timing, at);
+    const Level before = shown_;
+    shown_ = held ? std::min(before, alarm_.level()) : alarm_.level();
+    const auto edge = edge_between(before, shown_);
+    if (!edge) return std::nullopt;
+    if (*edge == AlarmEdge::raised) began_ = at;
+    AlarmChange change{.rule = rule, .edge = *edge, .at = at, .began = began_, .value = judgement.value};
+    change.level = shown_ == Level::unjudged ? before : shown_;
+    change.limit = limit_of(ladder, change.level);
+    return change;
+}
+
+std::optional<AlarmChange> HeldAlarm::end(Rule rule, Instant at) {
+    const Level before = shown_;
+    const Instant began = began_;
+    *this = HeldAlarm{};
+    if (before == Level::unjudged) return std::nullopt;
+    return AlarmChange{.rule = rule, .edge = AlarmEdge::returned, .level = before, .at = at, .began = began};
 }
 
 }  // namespace slipledger::analytics

@@ -23,11 +23,12 @@ enum class Rule : std::uint8_t {
     case_pressure,
     inlet_vacuum,
     instrument_suspect,
+    unrecorded_replacement,
 };
-inline constexpr std::size_t rule_count = 9;
+inline constexpr std::size_t rule_count = 10;
 inline constexpr std::array<std::string_view, rule_count> rule_names{
-    "leakage-ratio",    "efficiency",    "hours-in-hand", "step-change",       "drain-share",
-    "over-temperature", "case-pressure", "inlet-vacuum",  "instrument-suspect"};
+    "leakage-ratio",    "efficiency",    "hours-in-hand", "step-change",        "drain-share",
+    "over-temperature", "case-pressure", "inlet-vacuum",  "instrument-suspect", "unrecorded-replacement"};
 constexpr std::string_view name_of(Rule rule) {
     return rule_names[static_cast<std::size_t>(rule)];
 }
@@ -117,6 +118,37 @@ private:
         }
     };
     std::array<Latch, 3> latches_{};  // watch, plan, act
+    Instant began_;
+};
+
+// An alarm that can be held back while an instrument it rests on is in doubt. It goes on being judged unseen; while
+// held it may ease and return but neither begins nor worsens, and when the doubt goes it shows what it then stands at.
+//
+// Threads: one at a time.
+class HeldAlarm {
+public:
+    // Not computed: a state machine over AlarmState::judge.
+    std::optional<AlarmChange> judge(Rule rule, const RuleJudgement& judgement, const Ladder& ladder,
+                                     const RuleTiming& timing, Instant at, bool held);
+    // Ends the episode, if one is on: at the end of a life.
+    std::optional<AlarmChange> end(Rule rule, Instant at);
+
+    // As shown. Not computed: reads the state.
+    Level level() const { return shown_; }
+    // As it would be if no instrument were in doubt. Not computed: reads the state.
+    Level unheld() const { return alarm_.level(); }
+    // Data time the episode shown was raised. Not computed: reads the state.
+    Instant began() const { return began_; }
+
+    // Not computed: the list of fields a checkpoint keeps.
+    template <typename Self, typename Io>
+    static void each_field(Self& self, Io& io) {
+        io(self.alarm_, self.shown_, self.began_);
+    }
+
+private:
+    AlarmState alarm_;
+    Level shown_ = Level::unjudged;
     Instant began_;
 };
 

@@ -53,6 +53,9 @@ public:
     // Not computed: reads the state.
     const Step& step() const { return step_; }
 
+    // First summary of the last departure upwards, told as a step or not. Not computed: reads the state.
+    Instant departed() const { return departure_.began; }
+
     // Not computed: the list of fields a checkpoint keeps.
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {

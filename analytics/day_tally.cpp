@@ -31,4 +31,9 @@ void DayTally::fill(DayVerdict& verdict) const {
     verdict.leakage_kw = power_ / weight_;
 }
 
+double DayTally::ln_ratio() const {
+    const double healthy = leakage_ - excess_;
+    return leakage_ > 0.0 && healthy > 0.0 ? std::log(leakage_ / healthy) : unknown;
+}
+
 }  // namespace slipledger::analytics

@@ -19,6 +19,9 @@ public:
     // A step was told, of this ratio after over before. Not computed: remembers.
     void mark_step(double ratio) { step_ratio_ = ratio; }
 
+    // A jump was suspected and wear let go. Not computed: remembers.
+    void mark_let_go() { let_go_ = true; }
+
     // Adds what a summary's verdict says, weighted by its judged hours; its slip coefficient beside it.
     // Not computed: sums.
     void add(const SummaryVerdict& verdict, double slip_coefficient, double judged_h);
@@ -31,6 +34,14 @@ public:
     // Example: 2 L/min for 1 h and 4 L/min for 3 h -> 3.5.
     // Source: definition.
     void fill(DayVerdict& verdict) const;
+    // What it knows of the state: whether wear was let go. Not computed: a copy.
+    void fill(DayState& state) const { state.let_go = let_go_; }
+
+    // ln of the day's own ratio, ln [sum of leakage / sum of (leakage - excess)], each weighted by judged hours.
+    // Returns a pure number; NaN where nothing was judged, or what is left of leakage is not positive.
+    // Example: 2 L/min of which 0.5 excess for 1 h, 4 of which 1 for 3 h -> ln (14 / 10.5) = 0.288.
+    // Source: definition.
+    double ln_ratio() const;
 
     // Not computed: reads the state.
     const DutyDay& duty() const { return duty_; }
@@ -40,7 +51,7 @@ public:
     template <typename Self, typename Io>
     static void each_field(Self& self, Io& io) {
         io(self.duty_.running_h, self.duty_.judged_h, self.weight_, self.leakage_, self.excess_, self.power_,
-           self.slip_, self.slip_weight_, self.step_ratio_, self.fed_);
+           self.slip_, self.slip_weight_, self.step_ratio_, self.fed_, self.let_go_);
     }
 
 private:
@@ -53,6 +64,7 @@ private:
     double slip_weight_ = 0.0;
     double step_ratio_ = unknown;
     bool fed_ = false;
+    bool let_go_ = false;
 };
 
 }  // namespace slipledger::analytics

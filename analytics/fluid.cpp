@@ -3,6 +3,7 @@
 #include <array>
 #include <cmath>
 #include <limits>
+#include <numbers>
 
 namespace slipledger::analytics {
 namespace {
@@ -103,7 +104,8 @@ double viscosity_at_100_cst(double viscosity_40_cst, double index) {
 Fluid::Fluid()
     : Fluid({.temperature_c = 40.0, .viscosity_cst = 46.0}, {.temperature_c = 100.0, .viscosity_cst = 6.76}, {}) {}
 
-Fluid::Fluid(ViscosityAt one, ViscosityAt other, const FluidTraits& traits) : traits_(traits) {
+Fluid::Fluid(ViscosityAt one, ViscosityAt other, const FluidTraits& traits)
+    : one_(one), other_(other), traits_(traits) {
     const double x1 = std::log(one.temperature_c + kelvin);
     const double x2 = std::log(other.temperature_c + kelvin);
     slope_ = (walther(other.viscosity_cst) - walther(one.viscosity_cst)) / (x2 - x1);
@@ -129,6 +131,14 @@ double Fluid::kinematic_cst(double temperature_c) const {
     const double kelvins = temperature_c + kelvin;
     if (!(kelvins > 0.0)) return nan;
     return std::exp(std::exp(intercept_ + slope_ * std::log(kelvins))) - 0.7;
+}
+
+// log10 log10 z = (ln ln z - ln ln 10) / ln 10, and log10 T = ln T / ln 10: the slope only changes its sign.
+ViscosityLine Fluid::line() const {
+    return {.one = one_,
+            .other = other_,
+            .a = (intercept_ - std::log(std::numbers::ln10)) / std::numbers::ln10,
+            .b = -slope_};
 }
 
 double Fluid::density_kgm3(double temperature_c) const {

@@ -53,6 +53,16 @@ double viscosity_at_100_cst(double viscosity_40_cst, double index);
 struct ViscosityAt {
     double temperature_c;
     double viscosity_cst;
+
+    friend bool operator==(const ViscosityAt&, const ViscosityAt&) = default;
+};
+
+// An oil's viscosity line in the standard's own form, and the two points it was drawn through.
+struct ViscosityLine {
+    ViscosityAt one;
+    ViscosityAt other;
+    double a;
+    double b;
 };
 
 // What an oil is besides its viscosity line.
@@ -91,6 +101,14 @@ public:
     // Source: ASTM D341, the form for 2 mm2/s and more (from memory).
     double kinematic_cst(double temperature_c) const;
 
+    // The line behind kinematic_cst, so that a viscosity can be checked with a pocket calculator.
+    //
+    //   W = log10 log10 (nu + 0.7),   B = (W1 - W2) / (log10 T2 - log10 T1),   A = W1 + B log10 T1
+    //
+    // Returns pure numbers. Example: default oil -> A 9.4559, B 3.6996.
+    // Source: ASTM D341 (from memory).
+    ViscosityLine line() const;
+
     // Density at atmospheric pressure.
     //
     //   rho = rho15 exp(-a t (1 + 0.8 a t)),   a = 0.6278 / rho15,   t = temperature_c - 15
@@ -119,6 +137,8 @@ public:
 private:
     Fluid(ViscosityAt one, ViscosityAt other, const FluidTraits& traits);
 
+    ViscosityAt one_;
+    ViscosityAt other_;
     double intercept_;  // of ln ln (nu + 0.7) over ln T
     double slope_;
     FluidTraits traits_;

@@ -35,6 +35,19 @@ double healthy_leakage_lpm(const LeakageCoefficients& coefficients, const Featur
            coefficients.speed_lpm * features.speed;
 }
 
+LeakageLaw leakage_law(const LeakageCoefficients& coefficients, const LeakageState& reference) {
+    return {.laminar = coefficients.laminar_lpm * ratio_of_positive(reference.viscosity_pas, reference.pressure_rise_bar),
+            .orifice = coefficients.orifice_lpm *
+                       std::sqrt(ratio_of_positive(reference.density_kgm3, reference.pressure_rise_bar)),
+            .speed = ratio_of_positive(coefficients.speed_lpm, reference.speed_rpm)};
+}
+
+double leakage_lpm(const LeakageLaw& law, const LeakageState& at) {
+    const double pressure = std::max(at.pressure_rise_bar, 0.0);
+    return law.laminar * ratio_of_positive(pressure, at.viscosity_pas) +
+           law.orifice * std::sqrt(ratio_of_positive(pressure, at.density_kgm3)) + law.speed * std::abs(at.speed_rpm);
+}
+
 double slip_coefficient(const SlipInputs& in) {
     if (!(in.leakage_lpm >= 0.0) || !(in.viscosity_pas > 0.0) || !(in.displacement_cm3 > 0.0) ||
         !(in.pressure_rise_bar > 0.0))

@@ -47,6 +47,29 @@ Features features_at(const LeakageState& at, const LeakageState& reference);
 // Source: as features_at.
 double healthy_leakage_lpm(const LeakageCoefficients& coefficients, const Features& features);
 
+// A part's leakage freed from the point and the oil it is quoted at, so that parts in other machines compare:
+//
+//   q0 = A dp / mu + B sqrt(dp / rho) + C n
+struct LeakageLaw {
+    double laminar = unknown;  // A   L/min Pa s / bar
+    double orifice = unknown;  // B   L/min (kg/m3)^0.5 / bar^0.5
+    double speed = unknown;    // C   L/min / rpm
+};
+
+// The law behind coefficients at a reference point: A = a mu / dp, B = b / sqrt(dp / rho), C = c / n.
+//
+// NaN where a coefficient is, or where the reference's pressure, viscosity, density or speed is not positive.
+// Example: a 2, b 0.3, c 0.12 at 210 bar, 0.0274 Pa s, 853 kg/m3, 1480 rpm -> 2.610e-4, 0.6046, 8.108e-5.
+// Source: definition.
+LeakageLaw leakage_law(const LeakageCoefficients& coefficients, const LeakageState& reference);
+
+// Leakage by a law: A dp / mu + B sqrt(dp / rho) + C n.
+//
+// Returns L/min; NaN where the law or the state has one. A pressure rise below 0 counts as 0.
+// Example: the law above at 150 bar, 0.040 Pa s, 853 kg/m3, 1480 rpm -> 0.979 + 0.254 + 0.120 = 1.352.
+// Source: definition.
+double leakage_lpm(const LeakageLaw& law, const LeakageState& at);
+
 struct SlipInputs {
     double leakage_lpm = unknown;
     double viscosity_pas = unknown;

@@ -22,6 +22,10 @@ std::size_t first_not_before(const Series& series, Instant time) {
     return static_cast<std::size_t>(found - series.times.begin());
 }
 
+bool still_stands(Instant taken, Instant time, Milliseconds hold) {
+    return time - taken <= hold;
+}
+
 }  // namespace
 
 Aligner::Aligner(const SectionReadings& readings, Basis basis, const Usual& usual, Instant from, Instant to)
@@ -47,7 +51,7 @@ const OperatingPoint* Aligner::next() {
         Joined& joined = joined_[i];
         const std::vector<Instant>& times = joined.series->times;
         while (joined.passed < times.size() && times[joined.passed] <= point_.time) ++joined.passed;
-        const bool stands = joined.passed > 0 && point_.time - times[joined.passed - 1] <= joined.hold;
+        const bool stands = joined.passed > 0 && still_stands(times[joined.passed - 1], point_.time, joined.hold);
         point_.*joined.field = stands ? joined.series->values[joined.passed - 1] : unknown;
     }
     return &point_;
@@ -59,6 +63,22 @@ std::vector<OperatingPoint> align(const SectionReadings& readings, Basis basis, 
     Aligner aligner(readings, basis, usual, from, to);
     while (const OperatingPoint* point = aligner.next()) points.push_back(*point);
     return points;
+}
+
+std::vector<JoinedReading> readings_behind(const SectionReadings& readings, Basis basis, const Usual& usual,
+                                           Instant time) {
+    std::vector<JoinedReading> behind;
+    const auto add = [&](Quantity quantity, Milliseconds hold) {
+        const Series& series = readings[index_of(quantity)];
+        const auto after = std::upper_bound(series.times.begin(), series.times.end(), time);
+        if (after == series.times.begin() || !still_stands(*(after - 1), time, hold)) return;
+        const auto last = static_cast<std::size_t>(after - series.times.begin()) - 1;
+        behind.push_back(
+            {.quantity = quantity, .taken = series.times[last], .value = series.values[last], .hold = hold});
+    };
+    add(flow_quantity(basis), Milliseconds{0});
+    for (const auto& [quantity, field] : joined_quantities) add(quantity, hold_of(usual, quantity));
+    return behind;
 }
 
 }  // namespace slipledger::analytics

@@ -60,6 +60,20 @@ private:
 std::vector<OperatingPoint> align(const SectionReadings& readings, Basis basis, const Usual& usual, Instant from,
                                   Instant to);
 
+// A reading on which an operating point rests.
+struct JoinedReading {
+    Quantity quantity = Quantity::outlet_pressure;
+    Instant taken;
+    double value = unknown;
+    Milliseconds hold{0};  // how long it stands; 0 for the flow, which was read at the point's own time
+};
+
+// What the operating point at `time` rests on, for showing the working behind it: the flow read then and, of every
+// other quantity, the last reading that still stands. Quantities without one are left out.
+// Not computed: a join.
+std::vector<JoinedReading> readings_behind(const SectionReadings& readings, Basis basis, const Usual& usual,
+                                           Instant time);
+
 // The quantity whose readings the points of a basis stand at.
 // Not computed: a name.
 constexpr Quantity flow_quantity(Basis basis) {

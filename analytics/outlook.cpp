@@ -1,6 +1,7 @@
 #include "analytics/outlook.hpp"
 
 #include <array>
+#include <chrono>
 #include <cmath>
 #include <utility>
 
@@ -13,6 +14,7 @@ namespace {
 
 constexpr double quantile_90 = 1.2815515655446004;  // of the standard normal
 constexpr double thousand_h_in_days = 1000.0 / 24.0;
+constexpr double farthest_days = 50.0 * 365.25;
 
 double finite_or_unknown(double value) {
     return std::isfinite(value) ? value : unknown;
@@ -38,32 +40,31 @@ RatioLimit first_limit(const WearFilter& filter, const SectionSpec& spec, Basis 
     return first;
 }
 
-HoursInHand hours_to(const WearFilter& filter, const RatioLimit& limit, bool drift_established) {
+HoursInHand hours_to(const WearLaws& laws, const LifePrior& prior, const RatioLimit& limit, bool drift_established) {
     HoursInHand left;
-    if (!filter.primed() || !std::isfinite(limit.ratio)) return left;
+    if (!laws.begun() || !std::isfinite(limit.ratio)) return left;
     left.limit = limit.rule;
-    const WearBelief& belief = filter.belief();
-    const PassageQuantiles passage = passage_quantiles({.ln_ratio = belief.mean(ln_wear),
-                                                        .drift_per_day = belief.mean(drift),
-                                                        .ratio_variance = belief.covariance(ln_wear, ln_wear),
-                                                        .drift_variance = belief.covariance(drift, drift),
-                                                        .covariance = belief.covariance(ln_wear, drift),
-                                                        .ln_limit = std::log(limit.ratio)});
+    const PassageQuantiles passage =
+        passage_quantiles({.laws = laws.laws(prior.laws), .prior = prior, .ln_limit = std::log(limit.ratio)});
     left.low = finite_or_unknown(passage.low_h);
-    if (!drift_established && std::exp(belief.mean(ln_wear)) < limit.ratio) return left;
+    if (!drift_established && passage.mid_h > 0.0) return left;
     left.mid = finite_or_unknown(passage.mid_h);
     left.high = finite_or_unknown(passage.high_h);
     return left;
 }
 
-Ranged growth_per_1000_h(const WearFilter& filter) {
-    if (!filter.primed()) return {};
-    const WearBelief& belief = filter.belief();
-    const double per_drift = std::exp(belief.mean(ln_wear)) * thousand_h_in_days;
-    const double reach = quantile_90 * std::sqrt(belief.covariance(drift, drift));
-    return {.value = per_drift * belief.mean(drift),
-            .low = per_drift * (belief.mean(drift) - reach),
-            .high = per_drift * (belief.mean(drift) + reach)};
+Ranged growth_per_1000_h(double ratio, const DriftEstimate& drift) {
+    const double per_drift = ratio * thousand_h_in_days;
+    const double reach = quantile_90 * drift.sd;
+    return {.value = per_drift * drift.mean,
+            .low = per_drift * (drift.mean - reach),
+            .high = per_drift * (drift.mean + reach)};
+}
+
+std::optional<Instant> instant_ahead(Instant from, double hours, double duty_h_per_day) {
+    const double days = hours / duty_h_per_day;
+    if (!(days >= 0.0 && days < farthest_days)) return std::nullopt;
+    return from + std::chrono::duration_cast<Milliseconds>(std::chrono::duration<double, std::ratio<86400>>(days));
 }
 
 }  // namespace slipledger::analytics

@@ -1,20 +1,27 @@
-// Running hours in hand: when the leakage ratio first reaches its limit, from what the filter knows of wear and its
-// drift, over several wear laws, since which one a pump follows is not known. Simplest form: by quadrature, without
-// random numbers; what the drift may still do on its own is not in it.
+// Running hours in hand: when the leakage ratio first reaches its limit, from what each wear law knows of wear and its
+// rate, over all laws. By quadrature, without random numbers. That the rate will not stay what it is counts too: else
+// the ranges come out too narrow.
 #pragma once
 
+#include <array>
+
+#include "analytics/life_prior.hpp"
 #include "analytics/section_spec.hpp"
+#include "analytics/wear_laws.hpp"
 
 namespace slipledger::analytics {
 
-// Wear and drift as the filter holds them, and where it ends.
+// How far a rate wanders while wear goes on, as ln of a factor, per root of ln ratio: by the time the ratio has grown
+// e-fold the rate may be 1.65 times what it was, or 1 / 1.65. Settled on simulated sections, so that ranges hold.
+inline constexpr double rate_wander = 0.5;
+
+// What the laws say, how long such sections last, and where it ends.
 struct WearOutlook {
-    double ln_ratio = unknown;        // x
-    double drift_per_day = unknown;   // v, per running day
-    double ratio_variance = unknown;  // of x
-    double drift_variance = unknown;  // of v
-    double covariance = 0.0;
+    std::array<LawBelief, wear_laws> laws{};
+    LifePrior prior{};
     double ln_limit = unknown;  // ln of the ratio not to be reached
+    double wander = rate_wander;
+    double jitter = wear_jitter;
 };
 
 // Running hours until then; infinity where never.
@@ -24,17 +31,30 @@ struct PassageQuantiles {
     double high_h = unknown;  // 90 %
 };
 
-// Share of the outlook in which the limit is reached within `hours`. Under dw/dt = rate w^k, with k at -0.6, 0, 0.6
-// and 1.2 equally likely:
+// Rate at ratio 1, per running day, at which a law takes a life of that many hours from new to a ratio of 3:
 //
-//   T = 24 [(L/w)^(1-k) - 1] / ((1 - k) v),   P(T <= t) = mean over k and x of Phi((E[v|x] - c / t) / sd[v|x])
+//   r = 24 (3^(1-k) - 1) / ((1 - k) hours)
 //
-// Returns a share 0..1; 1 where the limit is behind; NaN where something is not known.
-// Example: x = 0, v = 0.01 exactly, L = 3 at k = 0 -> T = 4800 h; 110 h of it at ln law.
-// Source: method.md, 6 (first passage; wear laws after Whitmore and Schenkelberg 1997).
+//   k      power      -   any; at 1 the limit 24 ln 3 / hours
+//   hours  life_h     h   > 0
+//
+// Returns 1/running day. Example: k = 0, 4800 h -> 0.01. Source: method.md, 6 (dw/dt = rate w^k, integrated).
+double rate_of_life(double power, double life_h);
+
+// Share of the outlook in which the limit is reached within `hours`. For each law, with c = (L^(1-k) - w^(1-k)) /
+// (1-k):
+//
+//   T = 24 c / r,   p(r) ~ lognormal(r; prior) normal(r; what the days say),   x given r
+//   ln T  normal about that, variance  wander^2 (ln L - x) / 3 + var(x) (dc/dx / c)^2 + ln(1 + jitter^2 / (v (ln L -
+//   x)))
+//
+// the first for a rate that wanders on the way (the mean of a Brownian motion over its path), the last that of an
+// inverse Gaussian. Seven points over ln r. Returns a share 0..1; NaN where something is not known. Example: x = 0, k =
+// 0, r = 0.01 exactly, L = 3, no wander -> T = 4800 h. Source: method.md, 6 (first passage; wear laws after Whitmore
+// and Schenkelberg 1997; Folks and Chhikara 1978).
 double passage_share(const WearOutlook& outlook, double hours);
 
-// Quantiles of the same, by bisection between a tenth of an hour and 10^6 h. Low, mid, high at 10, 50, 90 %.
+// Quantiles of the same: low, mid, high at 10, 50, 90 %; 0 where under an hour, infinity beyond 10^6 h.
 // Source: method.md, 6.
 PassageQuantiles passage_quantiles(const WearOutlook& outlook);
 

@@ -15,6 +15,15 @@ struct RatedEfficiency {
     bool at_rated = true;
 };
 
+// Points of efficiency lost at a ratio: lost = 100 (w - 1) (1 - eta0), with its range from the ratio's.
+//
+//   eta0   healthy_efficiency   fraction   volumetric, at ratio 1
+//   w      leakage_ratio        -
+//
+// In percent of theoretical flow. Example: 0.97 at ratio 2 (1.8 to 2.2) -> 3 (2.4 to 3.6).
+// Source: ISO 4409 definition.
+Ranged points_lost(double healthy_efficiency, const Ranged& leakage_ratio);
+
 // From healthy leakage q0, ratio w and theoretical flow q_th at the point:
 //
 //   eta = 1 - w q0 / q_th,   healthy = 1 - q0 / q_th,   lost = 100 (w - 1) q0 / q_th

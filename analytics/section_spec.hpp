@@ -3,12 +3,16 @@
 // NaN stands for "not known" throughout.
 #pragma once
 
+#include <array>
 #include <cmath>
+#include <cstdint>
 #include <limits>
 #include <optional>
+#include <string_view>
 
 #include "analytics/fluid.hpp"
 #include "analytics/instant.hpp"
+#include "analytics/life_prior.hpp"
 #include "analytics/pump_type.hpp"
 
 namespace slipledger::analytics {
@@ -76,12 +80,37 @@ struct BaselineRule {
     std::optional<RunningHours> most;  // after it the coefficients are kept, no longer updated
 };
 
-// Leakage the maker measured on this cartridge / rotating group when new.
+// Leakage measured on this cartridge / rotating group when new, by its maker or by a reference test here.
 struct MakerTest {
     double leakage_lpm = unknown;
     DutyPoint at;
     double viscosity_cst = unknown;  // else from the fluid at at.temperature_c
+    double accuracy = 0.15;  // one standard deviation, fraction: the maker's bench against the plant's meter, one pump
+                             // against the next
+    bool made_here = false;  // a reference test, not the maker's
 };
+
+// What other parts of the model leak when healthy, at this section's reference point (sisters.hpp).
+struct SistersFigure {
+    double leakage_lpm = unknown;
+    double sd = unknown;  // of its logarithm, for one more part
+    int count = 0;
+};
+
+// What the healthy leakage of a life rests on, and so what its ratio is compared with. Stored by number: append only.
+enum class BaselineKind : std::uint8_t {
+    watching_began,  // its own readings, of a part already in service: "since watching began"
+    from_new,        // its own readings from new
+    maker_test,
+    reference_test,
+    sisters,
+};
+
+constexpr std::string_view name_of(BaselineKind kind) {
+    constexpr std::array<std::string_view, 5> names{"own, since watching began", "own, from new", "maker-test",
+                                                    "reference-test", "sisters"};
+    return names[static_cast<std::size_t>(kind)];
+}
 
 struct SectionSpec {
     PumpType type = PumpType::axial_piston;
@@ -109,10 +138,12 @@ struct SectionSpec {
     FlowMeter delivery_meter;
     BaselineRule baseline;
     std::optional<MakerTest> maker_test;
+    std::optional<SistersFigure> sisters;
     RuleLimits limits;
     double duty_h_per_week = unknown;  // planned running hours; else the usual duty
-    double spare_lead_days = unknown;
+    double spare_lead_days = unknown;  // 0: one is in stock
     std::optional<Instant> second_next_planned_stop;
+    LifePrior life_prior;           // by past lives of the model, as they stood at the end of the day before
     bool watched_from_new = false;  // the life began with a replacement told to the ledger, or `since` says new
 };
 

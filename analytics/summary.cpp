@@ -27,6 +27,11 @@ struct Mean {
     double value() const { return count == 0 ? unknown : sum / count; }
 };
 
+void widen(Extent& extent, double value) {
+    extent.low = std::fmin(extent.low, value);  // which pass over NaN
+    extent.high = std::fmax(extent.high, value);
+}
+
 // One summary in the making.
 class Builder {
 public:
@@ -37,7 +42,7 @@ public:
         summary_.basis = basis;
         summary_.life = life;
         points_ = 0;
-        drain_share_ = pressure_ = {};
+        drain_share_ = pressure_ = flow_ = speed_ = temperature_ = {};
         for (PointSample& sample : samples_) sample.clear();
         stop_flows_.clear();
         stop_tail_ = 0;
@@ -53,7 +58,7 @@ public:
         drop_short_stop();
         summary_.lowest_inlet_bar = std::fmin(summary_.lowest_inlet_bar, point.inlet_bar);
         summary_.running_h += point.hours;
-        pressure_.add(point.pressure_bar);
+        take_shown(point);
         if (summary_.basis == Basis::case_drain && point.theoretical_lpm > 0.0)
             drain_share_.add(point.flow_lpm / point.theoretical_lpm);
         if (!is_judged(point.standing)) return;
@@ -68,11 +73,25 @@ public:
         summary_.stop_flow_lpm = stats::median(stop_flows_);
         summary_.drain_share = drain_share_.value();
         summary_.mean_pressure_bar = pressure_.value();
+        summary_.mean_flow_lpm = flow_.value();
+        summary_.mean_speed_rpm = speed_.value();
+        summary_.mean_temperature_c = temperature_.value();
         for (std::size_t i = 0; i < judged_regimes; ++i) summary_.judged[i] = samples_[i].moments();
         return summary_;
     }
 
 private:
+    void take_shown(const JudgedPoint& point) {
+        pressure_.add(point.pressure_bar);
+        flow_.add(point.flow_lpm);
+        speed_.add(point.speed_rpm);
+        temperature_.add(point.temperature_c);
+        widen(summary_.pressure_bar, point.pressure_bar);
+        widen(summary_.flow_lpm, point.flow_lpm);
+        widen(summary_.speed_rpm, point.speed_rpm);
+        widen(summary_.temperature_c, point.temperature_c);
+    }
+
     // Whether a stop lasts ten minutes shows only at its end (or the summary's): until then its readings are on trial.
     void add_stopped(const JudgedPoint& point) {
         if (point.stopped_for < last_stopped_for_) drop_short_stop();
@@ -93,6 +112,9 @@ private:
     std::uint32_t points_ = 0;
     Mean drain_share_;
     Mean pressure_;
+    Mean flow_;
+    Mean speed_;
+    Mean temperature_;
     std::array<PointSample, judged_regimes> samples_;
     std::vector<double> stop_flows_;
     std::size_t stop_tail_ = 0;  // newest of stop_flows_ that belong to a stop still too short

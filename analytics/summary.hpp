@@ -40,6 +40,12 @@ struct Moments {
     double theoretical_lpm = 0.0;  // mean by the name plate; at full stroke while compensating
 };
 
+// Lowest and highest of a reading. NaN: there was none.
+struct Extent {
+    double low = unknown;
+    double high = unknown;
+};
+
 struct Summary {
     Instant start;
     Milliseconds length{0};  // may be cut short where a life or a dated fact begins or ends
@@ -55,6 +61,15 @@ struct Summary {
     double highest_case_bar = unknown;
     double lowest_inlet_bar = unknown;
     double mean_pressure_bar = unknown;  // while running, whatever the standing: for excess and kW
+    // What the instruments showed while the pump ran, whatever the standing, wild or not: a sensor that stands still or
+    // speaks in another unit shows here even where nothing can be judged.
+    double mean_flow_lpm = unknown;
+    double mean_speed_rpm = unknown;
+    double mean_temperature_c = unknown;
+    Extent flow_lpm;
+    Extent pressure_bar;
+    Extent speed_rpm;
+    Extent temperature_c;
     std::array<Moments, judged_regimes> judged;
 };
 

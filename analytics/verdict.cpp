@@ -12,8 +12,6 @@ constexpr double least_deadband = 0.02;             // of a ratio limit
 constexpr double points_deadband = 0.05;            // of a limit on points lost
 constexpr double enough_span = 1.5;
 constexpr double seldom = 0.10;
-constexpr double plain_sign = 0.7;
-constexpr double not_told_apart = 0.5;
 
 template <typename Low>
 RuleJudgement judge_range(const Ranged& range, const Ladder& ladder, double deadband_share, Low low_end) {
@@ -46,26 +44,10 @@ std::string_view name_of(UnjudgedReason reason) {
             return "no-temperature";
         case UnjudgedReason::silent:
             return "silent";
+        case UnjudgedReason::instrument:
+            return "instrument-suspect";
     }
     return "";
-}
-
-std::string_view name_of(CauseKind cause) {
-    switch (cause) {
-        case CauseKind::none:
-            return "none";
-        case CauseKind::wear:
-            return "wear";
-        case CauseKind::sudden_damage:
-            return "sudden-damage";
-        case CauseKind::wear_or_instrument:
-            return "wear-or-instrument";
-        case CauseKind::instrument:
-            return "instrument";
-        case CauseKind::oil_or_operation:
-            return "oil-or-operation";
-    }
-    return "none";
 }
 
 Ranged quoted(const LogEstimate& estimate) {
@@ -74,12 +56,20 @@ Ranged quoted(const LogEstimate& estimate) {
         .value = std::exp(estimate.ln), .low = std::exp(estimate.ln - reach), .high = std::exp(estimate.ln + reach)};
 }
 
+double ratio_low_wanted(double limit) {
+    return 1.0 + (limit - 1.0) / 2.0;
+}
+
+double points_low_wanted(double limit) {
+    return limit / 2.0;
+}
+
 RuleJudgement judge_ratio(const Ranged& ratio, const Ladder& ladder) {
-    return judge_range(ratio, ladder, least_deadband, [](double limit) { return 1.0 + (limit - 1.0) / 2.0; });
+    return judge_range(ratio, ladder, least_deadband, ratio_low_wanted);
 }
 
 RuleJudgement judge_points_lost(const Ranged& points, const Ladder& ladder) {
-    return judge_range(points, ladder, points_deadband, [](double limit) { return limit / 2.0; });
+    return judge_range(points, ladder, points_deadband, points_low_wanted);
 }
 
 RuleJudgement capped(RuleJudgement judgement, Level most) {
@@ -100,15 +90,6 @@ UnjudgedReason unjudged_reason(const Knowledge& knowledge) {
     if (knowledge.learning_h_left > 0.0) return UnjudgedReason::learning;
     if (knowledge.share_judged < seldom) return UnjudgedReason::seldom_judged;
     return UnjudgedReason::none;
-}
-
-Cause simplest_cause(const CauseEvidence& evidence) {
-    if (evidence.instrument_suspect) return {CauseKind::instrument, plain_sign};
-    if (evidence.step && evidence.explained) return {CauseKind::oil_or_operation, plain_sign};
-    if (evidence.step) return {CauseKind::sudden_damage, plain_sign};
-    if (evidence.level <= Level::sound) return {};
-    if (evidence.scales_with_leakage) return {CauseKind::wear, plain_sign};
-    return {CauseKind::wear_or_instrument, not_told_apart};
 }
 
 }  // namespace slipledger::analytics

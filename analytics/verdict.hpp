@@ -1,5 +1,5 @@
-// From estimates to words: which limit an estimate passes, what a section may be told at most on its basis, why it has
-// no level, and the simplest cause that fits. Pure decisions on values; the course of a section calls them in order.
+// From estimates to words: which limit an estimate passes, what a section may be told at most on its basis, and why it
+// has no level. Pure decisions on values; the course of a section calls them in order.
 #pragma once
 
 #include "analytics/alarm.hpp"
@@ -15,6 +15,17 @@ namespace slipledger::analytics {
 // Example: ln 0, sd 0.1 -> 1.00 (0.88 to 1.14).
 // Source: method.md, 5.
 Ranged quoted(const LogEstimate& estimate);
+
+// How far the low end of a leakage ratio must reach for a limit L to be passed: 1 + (L - 1) / 2, half way from healthy.
+//
+// Returns a ratio. Example: limit 2 -> 1.5. Source: the rule's definition (design.md, 7).
+double ratio_low_wanted(double limit);
+
+// The same for points of efficiency lost: L / 2, half way from none.
+//
+// Returns points, 1 % of theoretical flow. Example: limit 7 -> 3.5. Source: by analogy with the ratio (common practice,
+// no source).
+double points_low_wanted(double limit);
 
 // A limit L on the leakage ratio is passed when the value is above L and its low end above 1 + (L - 1) / 2; it is left
 // once the value is below L less the deadband (at least 2 % of L, the scatter of a day). Example: 2.1 (1.6 to 2.7)
@@ -45,23 +56,5 @@ struct Knowledge {
 // The first reason that holds, in the order: no basis, shared drain, no data, learning, seldom judged (under 10 %).
 // Source: design.md, 2.
 UnjudgedReason unjudged_reason(const Knowledge& knowledge);
-
-// What speaks for one cause or another.
-struct CauseEvidence {
-    Level level = Level::unjudged;
-    bool step = false;
-    bool explained = false;  // the step, by a change of oil, sensor, setting or range
-    bool instrument_suspect = false;
-    bool scales_with_leakage = false;  // excess grows with healthy leakage, as wear does and a meter's zero does not
-};
-
-struct Cause {
-    CauseKind kind = CauseKind::none;
-    double weight = 0.0;
-};
-
-// The simplest cause that fits; `none` at sound or unjudged without a step. Weights are first guesses (0.7 of a plain
-// sign, 0.5 where two cannot be told apart): the ranking of method.md, 7 is wider. Source: method.md, 7.
-Cause simplest_cause(const CauseEvidence& evidence);
 
 }  // namespace slipledger::analytics

@@ -5,6 +5,8 @@
 
 #include <Eigen/Eigenvalues>
 
+#include "analytics/operating_point.hpp"
+#include "analytics/reopening.hpp"
 #include "analytics/wear_motion.hpp"
 
 namespace slipledger::analytics {
@@ -25,6 +27,10 @@ constexpr double loose = 0.10;           // of predicted leakage: relinearise wh
 constexpr int relinearisations = 3;
 constexpr double speed_told_apart = 1.3;  // speed must vary by this factor before the speed term is learned
 constexpr double most_lowered = 0.15;  // in ln ratio, of a life's baseline
+constexpr double contradicting = 3.0;      // standard deviations between a reference test and what was expected
+constexpr double test_model_error = 0.03;  // of predicted leakage, at a set point that is held
+constexpr double least_worn = 0.1;         // of what was expected: a test that saw less still has a logarithm
+constexpr double as_new_sd = 0.05;
 constexpr double most_leakage = 1.2;      // of theoretical flow
 constexpr double least_leakage = -0.2;
 
@@ -285,6 +291,52 @@ void WearFilter::remember(const Moments& m) {
 
 void WearFilter::open_wear() {
     belief_.covariance(ln_wear, ln_wear) += jump_variance;
+}
+
+void WearFilter::open_for(const FactChange& change) {
+    if (primed_) analytics::open_for(belief_, change, spec_, basis_);
+}
+
+bool WearFilter::heed_test(const TestedLeakage& tested) {
+    if (!primed_) return false;
+    const FlowMeter& meter = basis_ == Basis::delivery ? spec_.delivery_meter : spec_.drain_meter;
+    Moments m;
+    m.feature = {tested.features.laminar, tested.features.orifice, tested.features.speed};
+    m.speed_rpm = tested.speed_rpm;
+    const Expected expected = expect(belief_.mean, m, false);
+    const double zero = belief_.mean(meter_zero);
+    Sighting seen{expected.design, tested.leakage_lpm - (expected.leakage_lpm - zero),
+                  square(tested.sd_lpm) + square(meter.gain_error * tested.flow_lpm) +
+                      square(test_model_error * expected.worn_lpm)};
+    seen.design(meter_zero) = 0.0;  // the bucket has none
+    const double surprise = std::abs(seen.innovation) / std::sqrt(stats::innovation_variance(belief_, seen));
+    if (surprise <= contradicting) {
+        take(seen, false);
+        return false;
+    }
+    const double others = expected.leakage_lpm - zero - expected.worn_lpm;
+    const double worn = std::max(tested.leakage_lpm - others, least_worn * expected.worn_lpm);
+    belief_.mean(ln_wear) += std::log(worn / expected.worn_lpm);
+    const Expected now = expect(belief_.mean, m, false);
+    seen.design.head<3>() = now.design.head<3>();
+    seen.design(ln_wear) = seen.design(disturbance) = now.worn_lpm;
+    seen.innovation = 0.0;
+    WearVector gain = WearVector::Zero();
+    gain(ln_wear) = 1.0 / now.worn_lpm;
+    stats::take_in(belief_, seen, gain);
+    FactChange instrument;
+    instrument.instruments = static_cast<std::uint16_t>(1U << index_of(flow_quantity(basis_)));
+    open_for(instrument);
+    return true;
+}
+
+void WearFilter::heed_as_new() {
+    if (!primed_) return;
+    Sighting seen;
+    seen.design(ln_wear) = 1.0;
+    seen.innovation = -belief_.mean(ln_wear);
+    seen.variance = square(as_new_sd);
+    take(seen, false);
 }
 
 LogEstimate WearFilter::wear() const {

@@ -11,6 +11,8 @@
 
 #include <limits>
 
+#include "analytics/fact_change.hpp"
+#include "analytics/reference_test.hpp"
 #include "analytics/section_spec.hpp"
 #include "analytics/summary.hpp"
 #include "analytics/wear_prior.hpp"
@@ -81,6 +83,23 @@ public:
     // A jump was found: lets x go where the next summaries say (`jump_variance` more).
     // Source: method.md, 5.
     void open_wear();
+
+    // Facts changed: opens what they may have moved (reopening.hpp), the wear kept. Not computed: hands it on.
+    void open_for(const FactChange& change);
+
+    // Takes in a test made past the plant's meters, its leakage seen as exp(x + u) (a f1 + b f2 + c f3), by delivery
+    // with dV n / 1000 more. Its variance counts the test's own sd, the gain error that the baseline was learned with,
+    // and 3 % of the predicted leakage. Within 3 standard deviations it is a sighting like others, and anchors
+    // everything. Beyond, meter and test contradict each other, and the test is believed: x alone follows it all the
+    // way, then the meter is opened as if it had been changed.
+    //
+    // True where they contradict each other; false before the first feed.
+    // Example: 3 L/min expected +- 0.1, tested 3.1 +- 0.09 -> false; tested 4.5 -> true, x up by ln 1.5.
+    // Source: method.md, 7 (a reference test outranks inference); Anderson and Moore 1979.
+    bool heed_test(const TestedLeakage& tested);
+
+    // The part is told to be as new: a sighting of x as 0 +- 0.05. Source: definition; 0.05 is common practice, no source.
+    void heed_as_new();
 
     // x with its standard deviation: ln of the leakage ratio. NaN before the first feed.
     // Source: method.md, 5.

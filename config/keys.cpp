@@ -87,6 +87,8 @@ constexpr std::array plant_rows{
     Key{"pump", "settling", duration, "", "10 s", "how long after a change of regime nothing is judged"},
     Key{"pump", "steady", object, "steady", "", "how fast things may move before a reading is transient"},
     Key{"pump", "drain", choice, "external|internal", "internal (gear), external", "where its case leakage goes"},
+    Key{"pump", "makes_up_by", choice, "stroke|time|nothing", "nothing (fixed), stroke",
+        "how lost flow is made up for; time: the machine runs longer"},
     Key{"pump", "sections", list, "section", "one, A", "sections; each may override what the pump says of them"},
     Key{"pump", "since", time, "", "newest reading", "since when the facts written here hold"},
 
@@ -140,6 +142,10 @@ constexpr std::array plant_rows{
     Key{"spare", "in_stock", whole, "", "0", "how many lie in the store", 0, 1000},
     within("spare", "lead_days", "d", 0, 2000, "0", "days from order to delivery"),
 
+    within("replacement", "part_cost", "currency", 0, 1e7, "0", "of the new cartridge, rotating group or gear set"),
+    within("replacement", "work_cost", "currency", 0, 1e7, "0", "of fitting it"),
+    within("replacement", "downtime_h", "h", 0, 10000, "0", "hours the machine stands still for it"),
+
     Key{"feed", "id", text, "", "required", "short name, unique among feeds"},
     Key{"feed", "kind", choice, "tcp|drop", "required", "listener or drop folder"},
     Key{"feed", "listen", text, "", "required (tcp)", "address and port: 127.0.0.1:7310; port 0: any free one"},
@@ -192,6 +198,7 @@ constexpr std::array plant_rows{
     within("economics", "energy_price_per_kwh", "per kWh", 0, 1000, "required", "price of electric energy"),
     Key{"economics", "currency", text, "", "required", "its currency, as printed"},
     within("economics", "motor_efficiency", "fraction", 0.3, 1, "0.93", "of the pump's motor"),
+    within("economics", "downtime_cost_per_h", "per h", 0, 1e7, "0", "what an hour of standstill costs"),
 };
 
 // What a pump says of all its sections and a section may say of itself: keys of both objects.
@@ -215,6 +222,7 @@ constexpr std::array section_rows{
     Key{"section", "sensors", map, "sensor", "", "instruments, by quantity"},
     Key{"section", "limits", object, "limits", "", "its own limits"},
     Key{"section", "spare", object, "spare", "", "spare part"},
+    Key{"section", "replacement", object, "replacement", "", "what a replacement costs, with economics"},
 };
 
 constexpr auto all_keys() {

@@ -5,6 +5,8 @@
 #pragma once
 
 #include <chrono>
+#include <functional>
+#include <map>
 #include <optional>
 #include <string>
 #include <string_view>
@@ -77,6 +79,7 @@ struct Economics {
     double energy_price_per_kwh = 0.0;
     std::string currency;
     double motor_efficiency = 0.93;
+    double downtime_cost_per_h = 0.0;  // what an hour costs in which a replacement stops the machine
 
     bool operator==(const Economics&) const = default;
 };
@@ -92,6 +95,7 @@ struct Plant {
     std::chrono::seconds lateness{600};
     std::chrono::seconds stop_grace{10};  // how long a stopping daemon lets loggers finish
     Store store;
+    std::map<std::string, Fluid, std::less<>> fluids;  // every oil that can be named: built in, and the plant's own
     std::vector<Reservoir> reservoirs;
     std::vector<PlannedStop> planned_stops;  // in order of `from`
     std::optional<double> duty_h_per_week;

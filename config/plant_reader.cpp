@@ -63,6 +63,7 @@ void read_reservoirs(const ObjectReader& reader, Plant& plant) {
         if (const auto found = fluids.find(fluid); found != fluids.end()) reservoir.fluid = found->second;
         item.read("volume_l", reservoir.volume_l);
     });
+    plant.fluids.insert(fluids.begin(), fluids.end());
 }
 
 void read_planned_stops(const ObjectReader& reader, Plant& plant) {
@@ -156,6 +157,7 @@ void read_economics(const ObjectReader& reader, std::optional<Economics>& econom
     reader.read("energy_price_per_kwh", economics->energy_price_per_kwh);
     reader.read("currency", economics->currency);
     reader.read("motor_efficiency", economics->motor_efficiency);
+    reader.read("downtime_cost_per_h", economics->downtime_cost_per_h);
 }
 
 const Node* plant_limits(const Node& root) {

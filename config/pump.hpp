@@ -91,6 +91,16 @@ struct Spare {
     bool operator==(const Spare&) const = default;
 };
 
+// What a new cartridge, rotating group or gear set costs, fitted; in the plant's currency. Threads: a value, share
+// freely.
+struct Replacement {
+    double part_cost = 0.0;
+    double work_cost = 0.0;
+    double downtime_h = 0.0;  // hours the machine stands still for it
+
+    bool operator==(const Replacement&) const = default;
+};
+
 // One pumping element with its own outlet, complete: what the plant file left out is the pump's.
 // Threads: a value, share freely.
 struct Section {
@@ -112,12 +122,15 @@ struct Section {
     Sensors sensors;
     Limits limits;
     std::optional<Spare> spare;
+    std::optional<Replacement> replacement;
 
     bool operator==(const Section&) const = default;
 };
 
 enum class Drain { external, internal };
 enum class Criticality { low, medium, high };
+// How the machine gets the flow that leaks away: by a longer stroke, by running longer, or not at all (it is slower).
+enum class MakesUpBy { stroke, time, nothing };
 
 // One housing on one shaft. Threads: a value, share freely.
 struct Pump {
@@ -136,6 +149,7 @@ struct Pump {
     std::chrono::seconds settling{10};  // how long after a transient or a change of regime nothing is judged
     Steady steady;
     Drain drain = Drain::external;
+    MakesUpBy makes_up_by = MakesUpBy::nothing;  // default by control: fixed nothing, else stroke
     std::optional<Spare> spare;
     std::optional<analytics::Instant> since;  // since when the facts written here hold; not given: the newest reading
     std::vector<Section> sections;            // never empty
@@ -150,5 +164,8 @@ struct Pump {
 // stop, sensors. Two plant files tell the same story about a pump exactly when these texts are equal, so a change can
 // be noticed and stored as an event.
 std::string pump_facts(const Pump& pump);
+
+// What of an oil is in these facts, alone, in the same form: how an event carries the oil that was filled in.
+std::string fluid_facts(const Fluid& fluid);
 
 }  // namespace slipledger::config

@@ -31,6 +31,9 @@ void check_control(const Case& at) {
     const Control control = at.pump.control;
     if (is_gear(at.pump.type) && control != Control::fixed)
         at.pump_reader.complain("control", "\"fixed\": a gear pump cannot change its stroke", "implausible");
+    if (control == Control::fixed && at.pump.makes_up_by == MakesUpBy::stroke)
+        at.pump_reader.complain("makes_up_by", "\"time\" or \"nothing\": a fixed pump has no stroke to lengthen",
+                                "implausible");
     if (control == Control::pressure_compensated && at.pump.drain == Drain::internal)
         at.pump_reader.complain("drain",
                                 "\"external\": a pressure-compensated pump leaks hot oil while it holds pressure, "

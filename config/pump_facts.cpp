@@ -65,4 +65,8 @@ std::string pump_facts(const Pump& pump) {
     return json.dump(-1, ' ', false, Json::error_handler_t::replace);
 }
 
+std::string fluid_facts(const Fluid& fluid) {
+    return facts_of(fluid).dump(-1, ' ', false, Json::error_handler_t::replace);
+}
+
 }  // namespace slipledger::config

@@ -33,6 +33,8 @@ void read_build(const ObjectReader& reader, Pump& pump) {
     reader.read("type", pump.type);
     set_type_defaults(pump);
     reader.read("control", pump.control);
+    pump.makes_up_by = pump.control == analytics::Control::fixed ? MakesUpBy::nothing : MakesUpBy::stroke;
+    reader.read("makes_up_by", pump.makes_up_by);
     reader.read("minimum_speed_rpm", pump.minimum_speed_rpm);
     reader.object("motor", [&](const ObjectReader& motor) {
         motor.read("nominal_rpm", pump.motor.nominal_rpm);

@@ -79,6 +79,13 @@ void read_spare(const ObjectReader& reader, std::optional<Spare>& spare) {
     reader.read("lead_days", spare->lead_days);
 }
 
+void read_replacement(const ObjectReader& reader, std::optional<Replacement>& replacement) {
+    if (!replacement) replacement.emplace();
+    reader.read("part_cost", replacement->part_cost);
+    reader.read("work_cost", replacement->work_cost);
+    reader.read("downtime_h", replacement->downtime_h);
+}
+
 void read_ladder(const ObjectReader& reader, Ladder& ladder) {
     reader.read("watch", ladder.watch);
     reader.read("plan", ladder.plan);
@@ -133,6 +140,8 @@ void read_section_facts(const ObjectReader& reader, SectionDraft& draft) {
     });
     reader.object("limits", [&](const ObjectReader& limits) { read_limits(limits, section.limits); });
     reader.object("spare", [&](const ObjectReader& spare) { read_spare(spare, section.spare); });
+    reader.object("replacement",
+                  [&](const ObjectReader& costs) { read_replacement(costs, section.replacement); });
 }
 
 Section finish_section(const ObjectReader& reader, SectionDraft draft) {

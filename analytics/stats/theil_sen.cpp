@@ -19,13 +19,15 @@ std::vector<double> pair_slopes(std::span<const double> xs, std::span<const doub
     for (std::size_t i = 1; i < xs.size(); ++i)
         for (std::size_t j = 0; j < i; ++j)
             if (xs[i] != xs[j]) slopes.push_back((ys[i] - ys[j]) / (xs[i] - xs[j]));
-    std::ranges::sort(slopes);
     return slopes;
 }
 
-double middle_of(const std::vector<double>& ordered) {
-    const std::size_t half = ordered.size() / 2;
-    return ordered.size() % 2 == 1 ? ordered[half] : 0.5 * (ordered[half - 1] + ordered[half]);
+// The value that would stand at that place were they in order; a place beyond an end is that end.
+double at_rank(std::vector<double>& values, double rank) {
+    const double last = static_cast<double>(values.size()) - 1.0;
+    const auto place = values.begin() + static_cast<std::ptrdiff_t>(std::clamp(rank, 0.0, last));
+    std::nth_element(values.begin(), place, values.end());
+    return *place;
 }
 
 }  // namespace
@@ -33,7 +35,7 @@ double middle_of(const std::vector<double>& ordered) {
 SlopeRange theil_sen(std::span<const double> xs, std::span<const double> ys, double share, double variance_factor) {
     constexpr double nan = std::numeric_limits<double>::quiet_NaN();
     const bool fit = xs.size() == ys.size() && xs.size() >= 2 && share > 0.0 && share < 1.0 && variance_factor > 0.0;
-    const std::vector<double> slopes = fit ? pair_slopes(xs, ys) : std::vector<double>();
+    std::vector<double> slopes = fit ? pair_slopes(xs, ys) : std::vector<double>();
     if (slopes.empty()) return {nan, nan, nan};
     const double z = boost::math::quantile(boost::math::normal(), 0.5 + 0.5 * share);
     const double n = static_cast<double>(xs.size());
@@ -41,10 +43,10 @@ SlopeRange theil_sen(std::span<const double> xs, std::span<const double> ys, dou
     const double spread =
         z * std::sqrt(variance_factor * std::fmax(n * (n - 1.0) * (2.0 * n + 5.0) - tied, 0.0) / 18.0);
     const double count = static_cast<double>(slopes.size());
-    const auto at = [&](double rank) { return slopes[static_cast<std::size_t>(std::clamp(rank, 0.0, count - 1.0))]; };
-    return {.value = middle_of(slopes),
-            .low = at(std::nearbyint((count - spread) / 2.0) - 1.0),
-            .high = at(std::nearbyint((count + spread) / 2.0))};
+    return {
+        .value = 0.5 * (at_rank(slopes, std::floor((count - 1.0) / 2.0)) + at_rank(slopes, std::floor(count / 2.0))),
+        .low = at_rank(slopes, std::nearbyint((count - spread) / 2.0) - 1.0),
+        .high = at_rank(slopes, std::nearbyint((count + spread) / 2.0))};
 }
 
 }  // namespace slipledger::analytics::stats

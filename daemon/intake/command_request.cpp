@@ -4,6 +4,7 @@
 #include <nlohmann/json.hpp>
 
 #include "daemon/intake/time_text.hpp"
+#include "daemon/ledger/event_body.hpp"
 
 namespace slipledger::intake {
 namespace {
@@ -36,6 +37,9 @@ Checked<ledger::Event> read_event(const json& given, const ledger::Directory& di
     event.at = *at;
     const auto body = given.find("body");
     event.body = body == given.end() ? "{}" : body->dump();
+    const std::string reservoir = ledger::reservoir_of(event);
+    if (!reservoir.empty() && !directory.reservoirs.contains(reservoir))
+        return bad("event.body.reservoir", in_quotes(reservoir), "a reservoir of the plant file");
     return event;
 }
 

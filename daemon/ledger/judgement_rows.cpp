@@ -2,6 +2,7 @@
 
 #include <algorithm>
 
+#include "daemon/ledger/cause_text.hpp"
 #include "daemon/ledger/statement.hpp"
 
 namespace slipledger::ledger {
@@ -15,7 +16,9 @@ constexpr const char* summary_columns =
     "drain_share, highest_temperature_c, highest_case_bar, lowest_inlet_bar, mean_pressure_bar, level, "
     "reason, leakage_ratio, leakage_ratio_low, leakage_ratio_high, filtered_ratio, filtered_ratio_low, "
     "filtered_ratio_high, efficiency, efficiency_low, efficiency_high, leakage_lpm, excess_lpm, "
-    "leakage_kw, outside_coverage";
+    "leakage_kw, outside_coverage, mean_flow_lpm, mean_speed_rpm, mean_temperature_c, lowest_flow_lpm, "
+    "highest_flow_lpm, lowest_pressure_bar, highest_pressure_bar, lowest_speed_rpm, highest_speed_rpm, "
+    "lowest_running_c, highest_running_c";
 
 constexpr const char* moments_columns =
     "track, start, regime, count, leakage_lpm, f1, f2, f3, cov_yy, cov_1y, cov_11, cov_2y, cov_21, "
@@ -29,7 +32,10 @@ constexpr const char* day_columns =
     "efficiency_at_rated, clearance_growth_percent, leakage_lpm, excess_lpm, leakage_kw, "
     "trend_per_1000_h, trend_low, trend_high, trend_established, onset, hours_low, hours_mid, hours_high, "
     "hours_limit, step_ratio, cause, cause_weight, running_h, judged_h, life_running_h, life_judged_h, "
-    "learning_h_left, share_judged_30d, slip_coefficient, zero_lpm";
+    "learning_h_left, share_judged_30d, slip_coefficient, zero_lpm, baseline, healthy_laminar, healthy_orifice, "
+    "healthy_speed, healthy_sd, replacement_at, replacement_before, replacement_after, causes, duty_h_per_day, wear, "
+    "drift, disturbance, wear_variance, wear_drift_covariance, drift_variance, wear_disturbance_covariance, "
+    "drift_disturbance_covariance, disturbance_variance, wear_let_go, law_slowing, law_straight, law_speeding, law_racing";
 
 constexpr const char* day_facts_columns =
     "pump, section, date, outlet_pressure_s, shaft_speed_s, case_drain_flow_s, fluid_temperature_s, "
@@ -37,6 +43,8 @@ constexpr const char* day_facts_columns =
     "running_s, hour_meter_s, particle_count_s, filter_dp_s, plateau_bar";
 
 constexpr const char* alarm_change_columns = "track, at, began, life, rule, edge, level, value, \"limit\"";
+
+constexpr const char* life_prior_columns = "track, life, date, begins, model, sisters";
 
 std::string insert_sql(const char* table, const std::string& columns) {
     std::string marks = "?";
@@ -69,6 +77,9 @@ void summary_fields(Io& io, Record& record) {
     ranged_fields(io, verdict.filtered_ratio);
     ranged_fields(io, verdict.efficiency);
     io & verdict.leakage_lpm & verdict.excess_lpm & verdict.leakage_kw & verdict.outside_coverage;
+    io & summary.mean_flow_lpm & summary.mean_speed_rpm & summary.mean_temperature_c;
+    for (auto* extent : {&summary.flow_lpm, &summary.pressure_bar, &summary.speed_rpm, &summary.temperature_c})
+        io & extent->low & extent->high;
 }
 
 template <typename Io, typename Moments>
@@ -94,6 +105,23 @@ void rule_name_field(ColumnReader& io, std::string_view& name) {
     name = lasting_rule_name(text);
 }
 
+void causes_field(Binder& io, const std::vector<analytics::RankedCause>& causes) {
+    io << std::string_view(text_of(causes));  // copied: the text ends here
+}
+void causes_field(ColumnReader& io, std::vector<analytics::RankedCause>& causes) {
+    std::string text;
+    io >> text;
+    causes = causes_of(text);
+}
+
+template <typename Io, typename State>
+void state_fields(Io& io, State& state) {
+    io & state.wear & state.drift & state.disturbance & state.wear_variance & state.wear_drift_covariance;
+    io & state.drift_variance & state.wear_disturbance_covariance & state.drift_disturbance_covariance;
+    io & state.disturbance_variance & state.let_go;
+    for (auto& weight : state.laws) io & weight;
+}
+
 template <typename Io, typename Record>
 void day_fields(Io& io, Record& record) {
     auto& verdict = record.verdict;
@@ -109,7 +137,12 @@ void day_fields(Io& io, Record& record) {
     rule_name_field(io, verdict.hours_in_hand.limit);
     io & verdict.step_ratio & verdict.cause & verdict.cause_weight & verdict.running_h & verdict.judged_h;
     io & verdict.life_running_h & verdict.life_judged_h & verdict.learning_h_left & verdict.share_judged_30d;
-    io & verdict.slip_coefficient & verdict.zero_lpm;
+    io & verdict.slip_coefficient & verdict.zero_lpm & verdict.baseline;
+    io & verdict.healthy.laminar & verdict.healthy.orifice & verdict.healthy.speed & verdict.healthy_sd;
+    io & verdict.replacement.at & verdict.replacement.ratio_before & verdict.replacement.ratio_after;
+    causes_field(io, verdict.causes);
+    io & verdict.hours_in_hand.duty_h_per_day;
+    state_fields(io, verdict.state);
 }
 
 template <typename Io, typename Record>
@@ -117,6 +150,11 @@ void day_facts_fields(Io& io, Record& record) {
     io & record.section & record.date;
     for (auto& interval : record.facts.interval_s) io & interval;
     io & record.facts.plateau_bar;
+}
+
+template <typename Io, typename Record>
+void life_prior_fields(Io& io, Record& record) {
+    io & record.track & record.life & record.date & record.begins & record.model & record.sisters;
 }
 
 template <typename Io, typename Change>
@@ -135,11 +173,18 @@ std::string insert_day_facts_sql() {
 }
 std::string insert_alarm_change_sql() { return insert_sql("alarm_change", alarm_change_columns); }
 
+std::string insert_life_prior_sql() {
+    std::string sql = insert_sql("life_prior", life_prior_columns);
+    return sql.replace(0, 6, "REPLACE");
+}
+
 std::string select_summary_sql() { return select_sql("hour_summary", summary_columns); }
 std::string select_moments_sql() { return select_sql("regime_moments", moments_columns); }
 std::string select_day_sql() { return select_sql("day", day_columns); }
 std::string select_day_facts_sql() { return select_sql("day_facts", day_facts_columns); }
 std::string select_alarm_change_sql() { return select_sql("alarm_change", alarm_change_columns); }
+
+std::string select_life_prior_sql() { return select_sql("life_prior", life_prior_columns); }
 
 void write_summary(SQLite::Statement& statement, TrackId track, const SummaryRecord& record) {
     Binder binder(statement);
@@ -174,6 +219,12 @@ void write_alarm_change(SQLite::Statement& statement, TrackId track, const analy
     Binder binder(statement);
     binder << track << change.at << change.began << change.life << name_of(change.rule);
     alarm_change_fields(binder, change);
+    run(statement);
+}
+
+void write_life_prior(SQLite::Statement& statement, const LifePriorRecord& record) {
+    Binder binder(statement);
+    life_prior_fields(binder, record);
     run(statement);
 }
 
@@ -225,6 +276,13 @@ analytics::AlarmChange read_alarm_change(SQLite::Statement& statement) {
         change.rule = static_cast<analytics::Rule>(found - analytics::rule_names.begin());
     alarm_change_fields(reader, change);
     return change;
+}
+
+LifePriorRecord read_life_prior(SQLite::Statement& statement) {
+    LifePriorRecord record;
+    ColumnReader reader(statement);
+    life_prior_fields(reader, record);
+    return record;
 }
 
 }  // namespace slipledger::ledger

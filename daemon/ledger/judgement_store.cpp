@@ -23,11 +23,13 @@ JudgementStore::JudgementStore(SQLite::Database& database)
       delete_days_(database, "DELETE FROM day WHERE track = ? AND date >= ?"),
       delete_checkpoints_(database, "DELETE FROM checkpoint WHERE track = ? AND date >= ?"),
       delete_changes_(database, "DELETE FROM alarm_change WHERE track = ? AND at >= ?"),
+      delete_priors_(database, "DELETE FROM life_prior WHERE track = ? AND date >= ?"),
       summary_(database, insert_summary_sql()),
       moments_(database, insert_moments_sql()),
       day_(database, insert_day_sql()),
       day_facts_(database, insert_day_facts_sql()),
       change_(database, insert_alarm_change_sql()),
+      prior_(database, insert_life_prior_sql()),
       checkpoint_(database, "INSERT INTO checkpoint (track, date, state) VALUES (?, ?, ?)"),
       checkpoint_dates_(database, "SELECT date FROM checkpoint WHERE track = ? ORDER BY date"),
       delete_checkpoint_(database, "DELETE FROM checkpoint WHERE track = ? AND date = ?") {}
@@ -37,7 +39,7 @@ void JudgementStore::remove_from(const TrackResult& result) {
         Binder(*statement) << result.track << result.from;
         run(*statement);
     }
-    for (SQLite::Statement* statement : {&delete_days_, &delete_checkpoints_}) {
+    for (SQLite::Statement* statement : {&delete_days_, &delete_checkpoints_, &delete_priors_}) {
         Binder(*statement) << result.track << result.from_date;
         run(*statement);
     }
@@ -54,6 +56,7 @@ void JudgementStore::store(const TrackResult& result) {
     }
     for (const DayRecord& record : result.days) write_day(day_, result.track, record);
     for (const analytics::AlarmChange& change : result.alarm_changes) write_alarm_change(change_, result.track, change);
+    for (const LifePriorRecord& record : result.life_priors) write_life_prior(prior_, record);
     for (const CheckpointRecord& record : result.checkpoints) {
         Binder(checkpoint_) << result.track << record.date;
         checkpoint_.bindNoCopy(3, record.state.data(), static_cast<int>(record.state.size()));

@@ -24,11 +24,13 @@ private:
     SQLite::Statement delete_days_;
     SQLite::Statement delete_checkpoints_;
     SQLite::Statement delete_changes_;
+    SQLite::Statement delete_priors_;
     SQLite::Statement summary_;
     SQLite::Statement moments_;
     SQLite::Statement day_;
     SQLite::Statement day_facts_;
     SQLite::Statement change_;
+    SQLite::Statement prior_;
     SQLite::Statement checkpoint_;
     SQLite::Statement checkpoint_dates_;
     SQLite::Statement delete_checkpoint_;

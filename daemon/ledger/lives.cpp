@@ -1,7 +1,9 @@
 #include "daemon/ledger/lives.hpp"
 
 #include <algorithm>
-#include <nlohmann/json.hpp>
+#include <set>
+
+#include "daemon/ledger/event_body.hpp"
 
 namespace slipledger::ledger {
 namespace {
@@ -9,21 +11,6 @@ namespace {
 using nlohmann::json;
 
 constexpr std::chrono::days new_when_watched_within{7};
-
-json body_of(const Event& event) {
-    json body = json::parse(event.body, nullptr, false);
-    return body.is_object() ? body : json::object();
-}
-
-std::string text_in(const json& body, const char* key) {
-    const auto found = body.find(key);
-    return found != body.end() && found->is_string() ? found->get<std::string>() : std::string();
-}
-
-std::optional<double> number_in(const json& body, const char* key) {
-    const auto found = body.find(key);
-    return found != body.end() && found->is_number() ? std::optional(found->get<double>()) : std::nullopt;
-}
 
 std::optional<analytics::MakerTest> maker_test_in(const json& body) {
     const auto found = body.find("maker_test");
@@ -56,7 +43,7 @@ Life fitted_by(const Event& event, std::int32_t number) {
 std::vector<Life> lives_of(std::span<const Event> events, std::string_view section) {
     std::vector<Life> lives(1);
     for (const Event& event : events) {
-        if (event.kind != "replaced" || !(event.section.empty() || event.section == section)) continue;
+        if (event.kind != "replaced" || event.pump.empty() || !(event.section.empty() || event.section == section)) continue;
         if (lives.back().since == event.at) lives.pop_back();  // told twice: the later entry corrects the earlier
         if (!lives.empty()) {
             lives.back().ended = event.at;
@@ -65,6 +52,17 @@ std::vector<Life> lives_of(std::span<const Event> events, std::string_view secti
         lives.push_back(fitted_by(event, static_cast<std::int32_t>(lives.size()) + 1));
     }
     return lives;
+}
+
+std::vector<Event> events_concerning(const config::Pump& pump, std::vector<Event> events) {
+    std::set<std::string> reservoirs{pump.reservoir};
+    for (const Event& event : events)
+        if (event.kind == "plant-changed" && event.pump == pump.id)
+            reservoirs.insert(text_in(object_in(body_of(event), "now"), "reservoir"));
+    std::erase_if(events, [&](const Event& event) {
+        return event.pump.empty() && !reservoirs.contains(reservoir_of(event));
+    });
+    return events;
 }
 
 std::vector<FactsFrom> facts_of(std::span<const Event> events) {
@@ -84,6 +82,16 @@ std::vector<FactsFrom> facts_of(std::span<const Event> events) {
         facts.push_back(std::move(entry));
     }
     return facts;
+}
+
+std::string model_of(const Life& life, std::span<const FactsFrom> facts, const config::Section& today) {
+    if (!life.model.empty()) return life.model;
+    const auto after = std::ranges::upper_bound(facts, life.since.value_or(Instant::min()), {}, &FactsFrom::at);
+    if (after == facts.end()) return today.model;
+    const json then = json::parse((after == facts.begin() ? after : std::prev(after))->facts, nullptr, false);
+    if (!then.is_object()) return today.model;
+    const json section = object_in(object_in(then, "sections"), today.id.c_str());
+    return section.contains("model") ? text_in(section, "model") : today.model;
 }
 
 bool watched_from_new(const Life& life, std::span<const FactsFrom> facts, std::optional<Instant> oldest) {

@@ -33,6 +33,9 @@ struct Life {
 // "found" tells of the part that came out, everything else of the part that went in.
 std::vector<Life> lives_of(std::span<const Event> events, std::string_view section);
 
+// Those of `events` that concern the pump: its own, and those told of a reservoir that is or once was its.
+std::vector<Event> events_concerning(const config::Pump& pump, std::vector<Event> events);
+
 // What the plant file said about a pump, from `at` on (config::pump_facts). Threads: a value, share freely.
 struct FactsFrom {
     Instant at;
@@ -43,6 +46,9 @@ struct FactsFrom {
 // Ascending by `at`. What was entered later and dated back replaces all that was said of the time after it. Empty: the pump
 // was never seen.
 std::vector<FactsFrom> facts_of(std::span<const Event> events);
+
+// The part's model: what the life tells, else what the plant file said of the section when it was fitted.
+std::string model_of(const Life& life, std::span<const FactsFrom> facts, const config::Section& today);
 
 // Whether the part was new when watching it began, so that its ratio is "what it leaked when new": it was fitted by a
 // `replaced` event, or the plant file gave a `since` at most a week before the pump's first reading, `oldest`.

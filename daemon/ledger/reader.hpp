@@ -18,6 +18,7 @@
 namespace slipledger::ledger {
 
 class PointRowsBuilder;
+struct Settlement;
 
 // Readings of one point: ascending times, one column per quantity that occurs, NaN where a cell is empty or disputed.
 struct PointRows {
@@ -27,7 +28,7 @@ struct PointRows {
 
 struct StoredCount {
     std::uint64_t readings = 0;  // cells with a value, disputed ones included
-    std::uint64_t disputed = 0;  // cells with several
+    std::uint64_t disputed = 0;  // cells with several of which none is believed
 };
 
 struct FeedState {
@@ -73,13 +74,17 @@ public:
     std::vector<SummaryRecord> summaries(TrackId track, Instant from, Instant to) const;
     std::vector<DayRecord> days(TrackId track, std::int32_t from_date, std::int32_t to_date) const;
     std::optional<DayRecord> last_day(TrackId track) const;
+    std::optional<DayRecord> last_day_of_life(TrackId track, std::int32_t life, std::int32_t before_date) const;  // finished
+    std::optional<LifePriorRecord> life_prior(TrackId track, std::int32_t life) const;
+    std::vector<LifePriorRecord> life_priors_after(std::int32_t date) const;  // of lives that began after that day
     std::array<std::uint64_t, analytics::standing_count> standing_counts(TrackId track, std::int32_t life) const;
     std::vector<analytics::AlarmChange> alarm_changes(TrackId track) const;                 // ascending by `at`
     std::vector<analytics::AlarmChange> alarm_changes_before(TrackId track, Instant at) const;
     bool has_notice(std::string_view id) const;
     std::vector<Notice> notices(std::string_view pump) const;  // empty pump: all; in order told
 
-    std::vector<Event> events(std::string_view pump) const;    // ascending by `at`, then id; empty pump: all
+    // Ascending by `at`, then id: the pump's, and those told of a reservoir or the plant; empty pump: all.
+    std::vector<Event> events(std::string_view pump) const;
     std::vector<OutboxRow> due(std::string_view target, Instant now, std::size_t most) const;  // pending; order kept per pump
     std::vector<DeliveryCount> deliveries() const;
     std::vector<FeedState> feeds() const;
@@ -89,6 +94,11 @@ public:
 private:
     struct Connection;
 
+    // A disputed cell and its believed value.
+    using Settled = std::function<void(std::int64_t time, std::size_t quantity, double value)>;
+
+    Settlement settlement_of(PointId point) const;
+    void each_settled(PointId point, Instant from, Instant to, const Settled& settled) const;
     void settle(PointRowsBuilder& builder, PointId point, Instant from, Instant to) const;
     std::optional<Instant> instant(const std::string& sql, std::int64_t id) const;
 

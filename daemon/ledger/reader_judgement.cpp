@@ -83,6 +83,30 @@ std::optional<DayRecord> Reader::last_day(TrackId track) const {
     return last;
 }
 
+std::optional<DayRecord> Reader::last_day_of_life(TrackId track, std::int32_t life, std::int32_t before_date) const {
+    std::optional<DayRecord> last;
+    connection_->each(
+        select_day_sql() + "WHERE track = ? AND life = ? AND date < ? AND finished = 1 ORDER BY date DESC LIMIT 1",
+        [&](SQLite::Statement& row) { last = read_day(row); }, track, life, before_date);
+    return last;
+}
+
+std::optional<LifePriorRecord> Reader::life_prior(TrackId track, std::int32_t life) const {
+    std::optional<LifePriorRecord> found;
+    connection_->each(
+        select_life_prior_sql() + "WHERE track = ? AND life = ?",
+        [&](SQLite::Statement& row) { found = read_life_prior(row); }, track, life);
+    return found;
+}
+
+std::vector<LifePriorRecord> Reader::life_priors_after(std::int32_t date) const {
+    std::vector<LifePriorRecord> priors;
+    connection_->each(
+        select_life_prior_sql() + "WHERE date > ? ORDER BY track, life",
+        [&](SQLite::Statement& row) { priors.push_back(read_life_prior(row)); }, date);
+    return priors;
+}
+
 std::array<std::uint64_t, analytics::standing_count> Reader::standing_counts(TrackId track, std::int32_t life) const {
     static const std::string sql = counts_sql();
     std::array<std::uint64_t, analytics::standing_count> counts{};

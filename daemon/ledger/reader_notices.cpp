@@ -47,7 +47,7 @@ std::vector<Event> Reader::events(std::string_view pump) const {
     if (pump.empty())
         connection_->each(select + "ORDER BY at, id", read);
     else
-        connection_->each(select + "WHERE pump = ? ORDER BY at, id", read, std::string(pump));
+        connection_->each(select + "WHERE pump IN (?, '') ORDER BY at, id", read, std::string(pump));
     return events;
 }
 

@@ -11,6 +11,15 @@ namespace {
 
 constexpr std::int64_t always = std::numeric_limits<std::int64_t>::min();
 
+// Words of people on disputed cells of a point, the newest first. Said of a pump they hold for all its points, said of one
+// of its sections for that section's, said of a reservoir for its point.
+constexpr const char* believed_sql =
+    "SELECT e.at, json_extract(e.body, '$.to_ms'), coalesce(json_extract(e.body, '$.quantity'), ''), f.id "
+    "FROM dated_event e JOIN feed f ON f.name = json_extract(e.body, '$.believe') "
+    "WHERE e.kind = 'settled' AND (EXISTS (SELECT 1 FROM point_name n JOIN pump p ON p.id = n.pump WHERE p.name = e.pump "
+    "AND n.point = ?1 AND e.section IN ('', n.section)) OR EXISTS (SELECT 1 FROM point t WHERE t.id = ?1 AND "
+    "t.kind = 'reservoir' AND e.pump = '' AND t.name = json_extract(e.body, '$.reservoir'))) ORDER BY e.id DESC";
+
 std::string recent_sql(const char* rest) { return "SELECT " + recent_columns() + " FROM recent WHERE " + rest; }
 
 }  // namespace
@@ -37,18 +46,30 @@ PointRows Reader::rows(PointId point, Instant from, Instant to) const {
     return builder.finish();
 }
 
-void Reader::settle(PointRowsBuilder& builder, PointId point, Instant from, Instant to) const {
-    Corrections corrections;
+Settlement Reader::settlement_of(PointId point) const {
+    Settlement settlement;
     connection_->each("SELECT f.id, c.id FROM feed f JOIN feed c ON c.name = f.corrects", [&](SQLite::Statement& row) {
         std::uint16_t feed = 0;
-        ColumnReader(row) >> feed >> corrections[feed];
+        ColumnReader(row) >> feed >> settlement.corrections[feed];
     });
-    if (corrections.empty()) return;
+    connection_->each(
+        believed_sql,
+        [&](SQLite::Statement& row) {
+            Believed& word = settlement.believed.emplace_back();
+            std::string quantity;
+            ColumnReader(row) >> word.from >> word.to >> quantity >> word.feed;
+            if (const auto known = analytics::quantity_named(quantity)) word.quantity = analytics::index_of(*known);
+        },
+        point);
+    return settlement;
+}
+
+void Reader::each_settled(PointId point, Instant from, Instant to, const Settled& settled) const {
+    const Settlement settlement = settlement_of(point);
+    if (settlement.empty()) return;
     std::vector<DisputedValue> cell;
     const auto close = [&] {
-        if (cell.empty()) return;
-        if (const auto value = settled_value(cell, corrections))
-            builder.settle(cell.front().time, cell.front().quantity, *value);
+        if (const auto value = settled_value(cell, settlement)) settled(cell.front().time, cell.front().quantity, *value);
         cell.clear();
     };
     connection_->each(
@@ -62,6 +83,12 @@ void Reader::settle(PointRowsBuilder& builder, PointId point, Instant from, Inst
         },
         point, from, to);
     close();
+}
+
+void Reader::settle(PointRowsBuilder& builder, PointId point, Instant from, Instant to) const {
+    each_settled(point, from, to, [&](std::int64_t time, std::size_t quantity, double value) {
+        builder.settle(time, quantity, value);
+    });
 }
 
 std::map<PointId, PointRows> Reader::filling(Instant from, Instant to) const {
@@ -131,6 +158,7 @@ StoredCount Reader::count(PointId point) const {
             }
         },
         point);
+    each_settled(point, Instant::min(), Instant::max(), [&](auto...) { --count.disputed; });
     return count;
 }
 

@@ -93,6 +93,16 @@ struct DayFactsRecord {
     analytics::DayFacts facts;
 };
 
+// What a life was told of its sisters when it began.
+struct LifePriorRecord {
+    TrackId track{};
+    std::int32_t life = 1;
+    std::int32_t date = 0;  // its first day
+    Instant begins;
+    std::string model;    // empty: none, so it has no sisters
+    std::string sisters;  // JSON array: who, and their healthy leakage by the end of the day before
+};
+
 // Everything of one track from `from` on, replacing what was there.
 struct TrackResult {
     TrackId track{};
@@ -102,6 +112,13 @@ struct TrackResult {
     std::vector<DayRecord> days;
     std::vector<CheckpointRecord> checkpoints;           // the ledger keeps the newest three and the first of each month
     std::vector<analytics::AlarmChange> alarm_changes;   // with at >= from
+    std::vector<LifePriorRecord> life_priors;            // of lives that begin at or after from_date
+};
+
+// A pump to be judged anew from an instant on, because something it was told of another has changed.
+struct ToldOtherwise {
+    PumpId pump{};
+    Instant from;
 };
 
 // Append-only; goes into the outbox for the alert log and each webhook in the transaction of its cause.
@@ -130,6 +147,7 @@ struct AnalysisResult {
     std::vector<TrackResult> tracks;
     std::vector<DayFactsRecord> day_facts;
     std::vector<Notice> notices;
+    std::vector<ToldOtherwise> told_otherwise;  // marks raised with it
     std::optional<Instant> mark_again_from;  // keep a mark from here (the pass was cut short), else the mark is cleared
 };
 

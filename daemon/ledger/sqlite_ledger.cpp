@@ -4,9 +4,9 @@
 #include <sqlite3.h>
 
 #include <algorithm>
-#include <array>
 #include <filesystem>
 
+#include "daemon/ledger/event_marks.hpp"
 #include "daemon/ledger/open_ledger.hpp"
 #include "daemon/ledger/registry.hpp"
 #include "daemon/ledger/statement.hpp"
@@ -15,14 +15,6 @@ namespace slipledger::ledger {
 namespace {
 
 constexpr int pages_a_backup_step = 256;  // a megabyte: some milliseconds
-
-// Acts on alarms and remarks; every other event may change what is judged.
-constexpr std::array<std::string_view, 7> events_that_judge_nothing{
-    "note", "acknowledged", "shelved", "unshelved", "out-of-service", "returned-to-service", "unacknowledged"};
-
-bool judges(const Event& event) {
-    return std::ranges::find(events_that_judge_nothing, event.kind) == events_that_judge_nothing.end();
-}
 
 Directory registered(SQLite::Database& database, const config::Plant& plant) try {
     register_plant(database, plant);
@@ -180,6 +172,7 @@ bool SqliteLedger::store(const AnalysisResult& result) {
         for (const TrackResult& track : result.tracks) judgements_.store(track);
         for (const DayFactsRecord& record : result.day_facts) judgements_.store(result.pump, record);
         outbox_.tell(result.notices);
+        for (const ToldOtherwise& told : result.told_otherwise) marks_.raise(told.pump, ms_of(told.from), ms_of(told.from));
         marks_.save();
         return true;
     });
@@ -191,13 +184,7 @@ std::int64_t SqliteLedger::store(const Event& event) {
                        << event.body;
         run(event_);
         const std::int64_t id = database_.getLastInsertRowid();
-        if (judges(event)) {
-            const auto pump = directory_.pumps.find(event.pump);
-            if (pump != directory_.pumps.end())
-                marks_.raise(pump->second, ms_of(event.at), ms_of(event.at));
-            else if (event.pump.empty())
-                marks_.raise_all(ms_of(event.at), ms_of(event.at));
-        }
+        raise_marks(database_, directory_, event, marks_);
         marks_.save();
         return id;
     });

@@ -1,12 +1,24 @@
 #include "daemon/report/health.hpp"
 
+#include <fmt/format.h>
+
 #include <algorithm>
+
+#include "daemon/report/when.hpp"
 
 namespace slipledger::report {
 
 const SectionHealth& PumpHealth::most_urgent() const {
     return *std::max_element(sections.begin(), sections.end(),
                              [](const SectionHealth& a, const SectionHealth& b) { return a.level < b.level; });
+}
+
+analytics::LikelyReplacement likely_replacement(const SectionHealth& health) {
+    return health.verdict ? health.verdict->replacement : analytics::LikelyReplacement{};
+}
+
+std::string replaced_command(const SectionHealth& health, Instant at) {
+    return fmt::format("slipledger replaced {} --section {} --at {} --by NAME", health.pump, health.section, rfc3339(at));
 }
 
 const std::vector<std::string>& cautions() {

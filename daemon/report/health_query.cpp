@@ -4,8 +4,11 @@
 #include <cmath>
 #include <limits>
 #include <set>
+#include <span>
 #include <tuple>
 
+#include "analytics/onset.hpp"
+#include "analytics/outlook.hpp"
 #include "daemon/ledger/lives.hpp"
 #include "daemon/report/alarm_query.hpp"
 #include "daemon/report/sentence.hpp"
@@ -16,9 +19,8 @@ namespace slipledger::report {
 
 namespace {
 
-constexpr double hours_a_year = 8766.0;
 constexpr std::size_t most_events = 20;
-constexpr std::int32_t duty_days = 28;  // usual duty is taken from so many days
+constexpr std::int32_t days_looked_at = 365;  // among which are the newest 180 judged ones of all but idle pumps
 
 // What a report asks for once and every section of the pump uses.
 struct Asked {
@@ -54,45 +56,27 @@ DataFacts data_facts(const Asked& asked, const config::Pump& pump, const config:
 }
 
 LifeFacts life_facts(const Asked& asked, const config::Pump& pump, const config::Section& section,
-                     const SpeakingTrack& speaking) {
+                     const SpeakingTrack& speaking, std::span<const ledger::Event> events) {
     LifeFacts facts;
     if (speaking.newest_day) {
         facts.number = speaking.newest_day->verdict.life;
         facts.running_hours = speaking.newest_day->verdict.life_running_h;
     }
-    const std::vector<ledger::Event> events = asked.reader.events(pump.id);
     const std::optional<Instant> oldest = asked.reader.oldest(asked.directory.pumps.at(pump.id));
+    const std::vector<ledger::FactsFrom> told = ledger::facts_of(events);
+    bool from_new = false;
     for (const ledger::Life& life : ledger::lives_of(events, section.id)) {
         if (life.number != facts.number) continue;
         facts.started = life.since ? life.since : oldest;
-        facts.baseline = ledger::watched_from_new(life, ledger::facts_of(events), oldest) ? "when new" : "when watching began";
+        from_new = ledger::watched_from_new(life, told, oldest);
     }
-    if (facts.baseline == "when watching began" && facts.started)
-        facts.baseline += " (" + local_date(*facts.started, asked.plant.time_zone) + ")";
+    const std::string began = facts.started ? local_date(*facts.started, asked.plant.time_zone) : std::string("not yet");
+    const auto unwatched = from_new ? analytics::BaselineKind::from_new : analytics::BaselineKind::watching_began;
+    const auto kind = speaking.newest_day ? speaking.newest_day->verdict.baseline : unwatched;
+    facts.baseline = std::string(name_of(kind));
+    if (kind == analytics::BaselineKind::watching_began) facts.baseline += " (" + began + ")";
+    facts.compared_with = compared_with(kind, from_new, began);
     return facts;
-}
-
-// Running hours a year: planned duty, else as the newest weeks went.
-double yearly_hours(const Asked& asked, const SpeakingTrack& speaking) {
-    if (asked.plant.duty_h_per_week) return *asked.plant.duty_h_per_week / 7.0 * (hours_a_year / 24.0);
-    const std::int32_t to = speaking.newest_day->verdict.day.date + 1;
-    const auto days = asked.reader.days(speaking.track.id, to - duty_days, to);
-    double running_h = 0.0;
-    for (const ledger::DayRecord& day : days) running_h += day.verdict.running_h;
-    return days.empty() ? analytics::unknown
-                        : running_h / static_cast<double>(days.size()) * (hours_a_year / 24.0);
-}
-
-// Power lost to leakage above healthy, on pumps whose stroke makes up for it. On a fixed pump leakage costs flow, not
-// shaft power, so no money is shown (method: design of the project, "Money").
-double yearly_cost(const Asked& asked, const config::Pump& pump, const SpeakingTrack& speaking) {
-    if (!asked.plant.economics || pump.control == analytics::Control::fixed) return analytics::unknown;
-    const analytics::DayVerdict& day = speaking.newest_day->verdict;
-    if (!(day.leakage_lpm > 0.0)) return analytics::unknown;
-    const double excess_kw = day.leakage_kw * (day.excess_lpm / day.leakage_lpm);
-    const config::Economics& economics = *asked.plant.economics;
-    return std::max(0.0, excess_kw) / economics.motor_efficiency * yearly_hours(asked, speaking) *
-           economics.energy_price_per_kwh;
 }
 
 std::vector<std::string> notes_of(const config::Pump& pump, const config::Section& section,
@@ -124,7 +108,7 @@ SentenceFacts sentence_facts(const Asked& asked, const config::Pump& pump, const
     facts.section = section.id;
     facts.only_section = health.only_section;
     facts.basis = health.basis.value_or(analytics::Basis::case_drain);
-    facts.compared_with = health.life.baseline;
+    facts.compared_with = health.life.compared_with;
     facts.temperature_known = !health.data.set_aside.contains(std::string(name_of(analytics::Standing::no_temperature))) ||
                               health.data.used > 0;
     facts.least_judged_h = section.baseline.min_h;
@@ -133,11 +117,46 @@ SentenceFacts sentence_facts(const Asked& asked, const config::Pump& pump, const
     facts.act_drain_share_percent = section.limits.drain_share_percent.act.value_or(analytics::unknown);
     facts.spare_in_stock = spare_in_stock(pump, section);
     if (silent) facts.silent_since = local_minute(*health.as_of, asked.plant.time_zone);
+    facts.time_zone = asked.plant.time_zone;
     if (health.verdict) facts.verdict = *health.verdict;
     return facts;
 }
 
-SectionHealth section_health(const Asked& asked, const config::Pump& pump, const config::Section& section) {
+std::vector<analytics::DayVerdict> newest_days(const Asked& asked, const SpeakingTrack& speaking) {
+    const std::int32_t last = speaking.newest_day->verdict.day.date;
+    std::vector<analytics::DayVerdict> days;
+    for (const ledger::DayRecord& day : asked.reader.days(speaking.track.id, last - days_looked_at, last + 1))
+        days.push_back(day.verdict);
+    return days;
+}
+
+std::optional<Instant> begin_of(std::span<const analytics::DayVerdict> days, std::int32_t date) {
+    const auto day = std::ranges::find(days, date, [](const analytics::DayVerdict& verdict) { return verdict.day.date; });
+    return day == days.end() ? std::nullopt : std::optional(day->day.begin);
+}
+
+// Looks back on stored days: what was said of each stays said, only the day on which wear began is quoted anew.
+void look_back(SectionHealth& health, std::span<const analytics::DayVerdict> days, bool with_witnesses) {
+    std::int32_t since = std::numeric_limits<std::int32_t>::min();
+    const bool worn = health.verdict->level > analytics::Level::sound;
+    if (const auto onset = worn ? analytics::onset_of(days, *health.basis) : std::nullopt) {
+        health.verdict->trend.onset = begin_of(days, onset->date);
+        if (!onset->earlier) health.onset_range.low = begin_of(days, onset->low);
+        health.onset_range.high = begin_of(days, onset->high);
+        since = onset->date;
+    }
+    if (with_witnesses) health.witnesses = analytics::witnesses_of(days, since);
+}
+
+DatesInHand dates_in_hand(const analytics::DayVerdict& day) {
+    const analytics::HoursInHand& left = day.hours_in_hand;
+    const auto date = [&](double hours) { return analytics::instant_ahead(day.day.end, hours, left.duty_h_per_day); };
+    return {date(left.low), date(left.mid), date(left.high)};
+}
+
+enum class Depth : std::uint8_t { list, report };
+
+SectionHealth section_health(const Asked& asked, const config::Pump& pump, const config::Section& section, Depth depth) {
     SectionHealth health;
     health.pump = pump.id;
     health.section = section.id;
@@ -151,7 +170,8 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
 
     const SpeakingTrack speaking = speaking_track(asked.reader, asked.directory, pump.id, section.id);
     health.data = data_facts(asked, pump, section, speaking);
-    health.life = life_facts(asked, pump, section, speaking);
+    const std::vector<ledger::Event> events = ledger::events_concerning(pump, asked.reader.events(pump.id));
+    health.life = life_facts(asked, pump, section, speaking, events);
     health.reason = std::string(name_of(analytics::UnjudgedReason::no_data));
     if (speaking.newest_day) {
         const analytics::DayVerdict& day = speaking.newest_day->verdict;
@@ -159,8 +179,13 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
         health.verdict = day;
         health.level = day.level;
         health.reason = day.level == analytics::Level::unjudged ? std::string(name_of(day.reason)) : std::string();
-        health.yearly_cost = yearly_cost(asked, pump, speaking);
+        health.cost = query_cost(asked.reader, asked.plant, pump, section, speaking.track, day);
+        health.causes = words_of(day.causes, {pump.type, speaking.track.basis, section.reference.pressure_bar,
+                                              asked.plant.display_units});
         health.notes = notes_of(pump, section, speaking, health.data);
+        health.dates_in_hand = dates_in_hand(day);
+        if (depth == Depth::report || day.level > analytics::Level::sound)
+            look_back(health, newest_days(asked, speaking), depth == Depth::report);
     }
     if (asked.plant.economics) health.currency = asked.plant.economics->currency;
     const bool silent = is_silent(asked, health.as_of);
@@ -170,7 +195,7 @@ SectionHealth section_health(const Asked& asked, const config::Pump& pump, const
     }
     health.sentence = sentence(sentence_facts(asked, pump, section, health, silent));
     health.alarms = query_alarms(asked.reader, asked.directory, pump.id, section.id);
-    health.events = dated_events(asked.reader.events(pump.id), section.id, most_events);
+    health.events = dated_events(events, section.id, most_events);
     std::erase_if(health.alarms, [](const Episode& episode) { return episode.cleared.has_value(); });
     std::stable_sort(health.alarms.begin(), health.alarms.end(),
                      [](const Episode& a, const Episode& b) { return a.level > b.level; });
@@ -205,7 +230,7 @@ PumpHealth query_health(const ledger::Reader& reader, const config::Plant& plant
     const Asked asked = ask(reader, plant, directory);
     PumpHealth health{pump.id, {}};
     for (const config::Section& section : pump.sections)
-        health.sections.push_back(section_health(asked, pump, section));
+        health.sections.push_back(section_health(asked, pump, section, Depth::report));
     return health;
 }
 
@@ -214,7 +239,7 @@ std::vector<SectionHealth> query_fleet(const ledger::Reader& reader, const confi
     const Asked asked = ask(reader, plant, directory);
     std::vector<SectionHealth> fleet;
     for (const config::Pump& pump : plant.pumps)
-        for (const config::Section& section : pump.sections) fleet.push_back(section_health(asked, pump, section));
+        for (const config::Section& section : pump.sections) fleet.push_back(section_health(asked, pump, section, Depth::list));
     std::stable_sort(fleet.begin(), fleet.end(), more_urgent);
     return fleet;
 }

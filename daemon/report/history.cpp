@@ -1,22 +1,40 @@
 #include "daemon/report/history.hpp"
 
+#include <algorithm>
 #include <chrono>
 #include <limits>
+#include <span>
+#include <string_view>
 
+#include "daemon/ledger/lives.hpp"
 #include "daemon/report/speaking_track.hpp"
 
 namespace slipledger::report {
 
 namespace {
 
+// Each event into the row in whose time it lies.
+void add_events(std::span<HistoryRow> rows, std::span<const ledger::Event> events, std::string_view section) {
+    if (rows.empty()) return;
+    std::vector<DatedEvent> told = dated_events(events, section, events.size());
+    for (auto event = told.rbegin(); event != told.rend(); ++event) {
+        const auto after = std::ranges::upper_bound(rows, event->at, {}, &HistoryRow::time);
+        (after == rows.begin() ? *after : *std::prev(after)).events.push_back(std::move(*event));
+    }
+}
+
 template <typename AppendRows>
 std::vector<HistoryRow> for_each_section(const ledger::Reader& reader, const config::Pump& pump,
                                          const std::optional<std::string>& section, AppendRows append) {
     const ledger::Directory directory = reader.directory();
+    const std::vector<ledger::Event> events = ledger::events_concerning(pump, reader.events(pump.id));
     std::vector<HistoryRow> rows;
-    for (const config::Section& each : pump.sections)
-        if (!section || *section == each.id)
-            append(speaking_track(reader, directory, pump.id, each.id).track, rows);
+    for (const config::Section& each : pump.sections) {
+        if (section && *section != each.id) continue;
+        const std::size_t before = rows.size();
+        append(speaking_track(reader, directory, pump.id, each.id).track, rows);
+        add_events(std::span(rows).subspan(before), events, each.id);
+    }
     return rows;
 }
 

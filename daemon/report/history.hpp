@@ -8,6 +8,7 @@
 #include "analytics/course.hpp"
 #include "config/plant.hpp"
 #include "daemon/ledger/reader.hpp"
+#include "daemon/report/dated_event.hpp"
 
 namespace slipledger::report {
 
@@ -27,6 +28,7 @@ struct HistoryRow {
     double excess_lpm = analytics::unknown;
     std::optional<analytics::HoursInHand> hours_in_hand;  // by day only
     std::string cause;
+    std::vector<DatedEvent> events;  // from its start to the next row's, oldest first; earlier ones in the first row
 };
 
 // Rows of every section of `pump` (or of `section` alone), section by section, on the basis that speaks for it today.

@@ -77,6 +77,56 @@ std::string trend_text(const analytics::Trend& trend) {
                        trend.per_1000_h.low, trend.per_1000_h.high, trend.established ? "" : ", not established");
 }
 
+std::string payback_words(const LeakCost& cost, const std::string& currency) {
+    const std::string price = fmt::format("{:.0f} {}", *cost.replacement_cost, currency);
+    if (!cost.pays_in.empty()) return fmt::format("{}; saved again in energy alone by {}", price, cost.pays_in);
+    return fmt::format("{}; not saved again in energy alone within {:.0f} years", price, longest_payback_years);
+}
+
+std::string cost_figures(const LeakCost& cost, const std::string& currency) {
+    std::string out;
+    if (cost.flow_lost_percent >= 0.05)
+        out += figure("flow lost", fmt::format("{:.1f} % less than when healthy", cost.flow_lost_percent),
+                      cost.flow_at_rated ? "at the rated point" : "at the reference point");
+    if (!std::isfinite(cost.per_year.value)) return out;
+    out += figure("cost of the leak", fmt::format("{} {} a year", with_range(cost.per_year, 0), printable(currency)),
+                  fmt::format("{} kW from the mains, {:.0f} running hours a year", plain(cost.power_kw, 2),
+                              cost.running_h_per_year));
+    if (cost.replacement_cost) out += figure("replacement", payback_words(cost, printable(currency)));
+    return out;
+}
+
+std::string onset_text(const SectionHealth& health, const config::Plant& plant) {
+    const std::string date = local_date(*health.verdict->trend.onset, plant.time_zone);
+    const OnsetRange& range = health.onset_range;
+    if (!range.high) return date;
+    const std::string low = range.low ? local_date(*range.low, plant.time_zone) : std::string("earlier");
+    return fmt::format("{} ({} to {})", date, low, local_date(*range.high, plant.time_zone));
+}
+
+std::string dates_text(const SectionHealth& health, const config::Plant& plant) {
+    const DatesInHand& dates = health.dates_in_hand;
+    const double per_week = 7.0 * health.verdict->hours_in_hand.duty_h_per_day;
+    if (!dates.low || !dates.mid) return {};
+    const std::string high = dates.high ? local_date(*dates.high, plant.time_zone) : std::string("open");
+    return fmt::format("{} ({} to {}) at {:.0f} h a week", local_date(*dates.mid, plant.time_zone),
+                       local_date(*dates.low, plant.time_zone), high, per_week);
+}
+
+// Plain statistics on the days' own ratios, which decide nothing.
+std::string witnesses_text(const analytics::Witnesses& told) {
+    if (!std::isfinite(told.cumulative_sum)) return {};
+    const analytics::Ranged& slope = told.slope_per_1000_h;
+    std::string text;
+    if (std::isfinite(slope.value))
+        text = fmt::format("robust slope {:+.2f} ({:+.2f} to {:+.2f}) per 1000 h, rank test p {:.2g}; ", slope.value,
+                           slope.low, slope.high, told.rank_p);
+    text += fmt::format("cumulative sum {:.2f} of {:g}", told.cumulative_sum, analytics::sum_limit);
+    if (told.sum_passed) text += " passed " + iso_date(*told.sum_passed);
+    text += told.changed ? fmt::format("; a {} at {}", name_of(told.shape), iso_date(*told.changed)) : "; no step or bend";
+    return figure("second witnesses", text, fmt::format("by {} days' own ratios", told.days));
+}
+
 // What is not known has no line.
 std::string figures(const SectionHealth& health, const config::Plant& plant) {
     if (!health.verdict) return {};
@@ -91,12 +141,27 @@ std::string figures(const SectionHealth& health, const config::Plant& plant) {
     if (std::isfinite(day.clearance_growth_percent))
         out += figure("clearance growth", plain(day.clearance_growth_percent, 0) + " %");
     if (std::isfinite(day.trend.per_1000_h.value)) out += figure("trend", trend_text(day.trend));
-    if (day.trend.onset) out += figure("since", local_date(*day.trend.onset, plant.time_zone));
-    if (std::isfinite(day.hours_in_hand.low)) out += figure("hours in hand", hours_in_hand_text(day.hours_in_hand));
-    if (day.cause != analytics::CauseKind::none)
-        out += figure("likely cause", fmt::format("{} ({:.0f} %)", name_of(day.cause), day.cause_weight * 100.0));
-    if (std::isfinite(health.yearly_cost))
-        out += figure("cost of the leak", fmt::format("{:.0f} {} a year", health.yearly_cost, health.currency));
+    if (day.trend.onset) out += figure("since", onset_text(health, plant));
+    if (std::isfinite(day.hours_in_hand.low))
+        out += figure("hours in hand", hours_in_hand_text(day.hours_in_hand), dates_text(health, plant));
+    if (health.witnesses) out += witnesses_text(*health.witnesses);
+    if (health.cost) out += cost_figures(*health.cost, health.currency);
+    return out;
+}
+
+// The first three; what would settle the matter stands under the first.
+std::string causes_text(const SectionHealth& health) {
+    constexpr std::size_t most = 3;
+    constexpr double worth_a_line = 0.05;
+    std::string out;
+    for (std::size_t i = 0; i < std::min(most, health.causes.size()); ++i) {
+        const CauseWords& cause = health.causes[i];
+        if (i > 0 && cause.weight < worth_a_line) break;
+        out += figure(i == 0 ? "likely cause" : "or else", fmt::format("{}, {:.0f} %", cause.title, cause.weight * 100.0));
+        for (const std::string& sentence : cause.in_favour) out += paragraph("    for      ", sentence);
+        for (const std::string& sentence : cause.against) out += paragraph("    against  ", sentence);
+        if (i == 0) out += paragraph("    settle   ", cause.settles);
+    }
     return out;
 }
 
@@ -105,7 +170,8 @@ std::string data_text(const SectionHealth& health) {
     for (const auto& [reason, count] : health.data.set_aside)
         aside += fmt::format("{}{} {}", aside.empty() ? "" : ", ", reason, count);
     std::string out = figure("life", fmt::format("{:.0f} running hours watched, compared with {}",
-                                                 health.life.running_hours, health.life.baseline));
+                                                 health.life.running_hours, health.life.compared_with));
+    out += figure("baseline", health.life.baseline);
     out += figure("readings", fmt::format("{} stored, {} disputed", health.data.readings, health.data.disputed));
     out += figure("operating points", fmt::format("{} judged; set aside: {}", health.data.used,
                                                   aside.empty() ? "none" : aside));
@@ -132,15 +198,32 @@ std::string episode_line(const Episode& episode, const config::Plant& plant, con
            said_of(episode);
 }
 
+std::string event_line(const std::string& lead, const DatedEvent& event) {
+    const std::string by = event.by.empty() ? "" : ", by " + event.by;
+    const std::string text = event.text.empty() ? "" : ": " + event.text;
+    return paragraph(lead, printable(event.kind + by + text));
+}
+
 std::string event_lines(const SectionHealth& health, const config::Plant& plant) {
     constexpr std::size_t most = 5;
     std::string out;
-    for (std::size_t i = 0; i < std::min(most, health.events.size()); ++i) {
-        const DatedEvent& event = health.events[i];
-        const std::string by = event.by.empty() ? "" : ", by " + event.by;
-        const std::string text = event.text.empty() ? "" : ": " + event.text;
-        out += paragraph("  " + local_date(event.at, plant.time_zone) + "  ", printable(event.kind + by + text));
-    }
+    for (std::size_t i = 0; i < std::min(most, health.events.size()); ++i)
+        out += event_line("  " + local_date(health.events[i].at, plant.time_zone) + "  ", health.events[i]);
+    return out;
+}
+
+// Offered, not assumed: the words to tell it stand ready.
+std::string replacement_lines(const SectionHealth& health, const config::Plant& plant) {
+    const analytics::LikelyReplacement likely = likely_replacement(health);
+    if (!likely.at) return {};
+    return paragraph("  note: ", fmt::format("Looks like a replacement on {}: the ratio fell from {:.1f} to {:.1f}. If so:",
+                                             local_date(*likely.at, plant.time_zone), likely.ratio_before, likely.ratio_after)) +
+           paragraph("        ", printable(replaced_command(health, *likely.at)));
+}
+
+std::string history_events(const HistoryRow& row, const config::Plant& plant) {
+    std::string out;
+    for (const DatedEvent& event : row.events) out += event_line(local_minute(event.at, plant.time_zone).substr(0, 16) + " - ", event);
     return out;
 }
 
@@ -150,6 +233,22 @@ std::string history_line(const HistoryRow& row, const config::Plant& plant, cons
                        plain(row.efficiency.value * 100.0, 1), plain(row.excess_lpm, 2));
 }
 
+// What all leaks cost together, and where most of it goes; empty where nothing has a price.
+std::string fleet_cost(const std::vector<SectionHealth>& fleet) {
+    double sum = 0.0;
+    const SectionHealth* dearest = nullptr;
+    for (const SectionHealth& health : fleet) {
+        const double cost = health.cost ? health.cost->per_year.value : analytics::unknown;
+        if (!(cost > 0.0)) continue;
+        sum += cost;
+        if (dearest == nullptr || cost > dearest->cost->per_year.value) dearest = &health;
+    }
+    if (!(sum >= 1.0)) return {};
+    const std::string name = dearest->only_section ? dearest->pump : dearest->pump + "/" + dearest->section;
+    return paragraph("", fmt::format("Leakage above healthy costs {:.0f} {} a year at the usual duty, {:.0f} of it at {}.",
+                                     sum, printable(dearest->currency), dearest->cost->per_year.value, printable(name)));
+}
+
 }  // namespace
 
 std::string health_text(const SectionHealth& health, const config::Plant& plant, const Paper& paper) {
@@ -157,7 +256,8 @@ std::string health_text(const SectionHealth& health, const config::Plant& plant,
     const std::string lead = level_word(health.level, paper);
     const std::string body = paragraph(std::string(14, ' '), health.sentence);
     out += lead + "  " + body.substr(14);
-    out += '\n' + figures(health, plant) + data_text(health);
+    out += '\n' + figures(health, plant) + causes_text(health) + data_text(health);
+    out += replacement_lines(health, plant);
     for (const std::string& note : health.notes) out += paragraph("  note: ", note);
     for (const Episode& alarm : health.alarms) out += "  alarm: " + alarm.rule + ", " + alarm.state + "\n";
     return out + event_lines(health, plant);
@@ -181,6 +281,7 @@ std::string fleet_text(const std::vector<SectionHealth>& fleet, const config::Pl
         out += paragraph(std::string(13, ' '), health.sentence);
     }
     out += rule_off();
+    out += fleet_cost(fleet);
     out += paragraph("", "Columns: level, pump, leakage ratio with its 80 % range (1 = as new), hours in hand. `slipledger health PUMP` tells more.");
     for (const std::string& caution : cautions()) out += paragraph("! ", caution);
     return out;
@@ -191,11 +292,13 @@ std::string history_text(const std::vector<HistoryRow>& history, const config::P
                                   cell("ratio (80 % range)", 19), "efficiency  excess");
     for (std::size_t i = 0; i < history.size(); ++i) {
         const std::size_t first = i;
-        while (i < history.size() && history[i].stood_still && history[i].section == history[first].section) ++i;
+        while (i < history.size() && history[i].stood_still && history[i].events.empty() &&
+               history[i].section == history[first].section)
+            ++i;
         if (const std::size_t days = i - first; days > 0)
             out += fmt::format("... {} day{} without a verdict\n", days, days == 1 ? "" : "s");
         if (i > first) --i;
-        else out += history_line(history[i], plant, paper);
+        else out += history_line(history[i], plant, paper) + history_events(history[i], plant);
     }
     return out + paragraph("", fmt::format("Excess leakage in L/min; times in {}.", plant.time_zone));
 }

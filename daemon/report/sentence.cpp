@@ -3,7 +3,12 @@
 #include <fmt/format.h>
 
 #include <algorithm>
+#include <cctype>
 #include <cmath>
+
+#include "analytics/outlook.hpp"
+#include "daemon/report/cause_words.hpp"
+#include "daemon/report/when.hpp"
 
 namespace slipledger::report {
 namespace {
@@ -61,6 +66,8 @@ std::string unjudged(const SentenceFacts& facts) {
         case UnjudgedReason::no_temperature:
             return subject(facts) + " is not judged: its fluid temperature, and so the oil's viscosity, is not known; only its raw "
                                     "drain share is watched.";
+        case UnjudgedReason::instrument:
+            return subject(facts) + " is not judged: an instrument is in doubt, and what rests on it is held back.";
         default: return subject(facts) + " is not judged yet: no steady operating point under load has come in.";
     }
 }
@@ -74,10 +81,21 @@ std::string leaks(const SentenceFacts& facts) {
     const std::string seen = facts.basis == analytics::Basis::delivery ? ", by its delivery flow" : "";
     const bool as_before = facts.verdict.level <= Level::sound && now.low <= 1.0 && now.high >= 1.0;
     if (as_before)
-        return fmt::format("{} leaks what it did {} (ratio {}, {}), {}{}", subject(facts), facts.compared_with,
-                           ratio(now.value), range(now), same, seen);
-    return fmt::format("{} leaks {} times ({}) what it did {}, {}{}", subject(facts), ratio(now.value), range(now),
+        return fmt::format("{} leaks {} (ratio {}, {}), {}{}", subject(facts), facts.compared_with, ratio(now.value),
+                           range(now), same, seen);
+    return fmt::format("{} leaks {} times ({}) {}, {}{}", subject(facts), ratio(now.value), range(now),
                        facts.compared_with, same, seen);
+}
+
+// The same as dates, at the duty planned or usual.
+std::string when(const SentenceFacts& facts) {
+    const analytics::HoursInHand& left = facts.verdict.hours_in_hand;
+    if (facts.time_zone.empty()) return {};
+    const auto low = analytics::instant_ahead(facts.verdict.day.end, left.low, left.duty_h_per_day);
+    const auto mid = analytics::instant_ahead(facts.verdict.day.end, left.mid, left.duty_h_per_day);
+    if (!low || !mid) return {};
+    return fmt::format(", around {} and hardly before {}", local_date(*mid, facts.time_zone),
+                       local_date(*low, facts.time_zone));
 }
 
 std::string in_hand(const SentenceFacts& facts) {
@@ -85,7 +103,7 @@ std::string in_hand(const SentenceFacts& facts) {
     const analytics::HoursInHand& left = day.hours_in_hand;
     if (day.leakage_ratio.value > facts.act_ratio) return "; that is beyond " + limit_name(facts, "leakage-ratio");
     if (std::isfinite(left.mid))
-        return fmt::format("; about {} running hours to {}", hours(left.mid), limit_name(facts, left.limit));
+        return fmt::format("; about {} running hours to {}", hours(left.mid), limit_name(facts, left.limit)) + when(facts);
     if (std::isfinite(left.low) && day.trend.established)
         return fmt::format("; at least {} running hours to {}", hours(left.low), limit_name(facts, left.limit));
     if (std::isfinite(left.low))
@@ -101,16 +119,6 @@ std::string step(const SentenceFacts& facts) {
 
 std::string part(const SentenceFacts& facts) { return std::string(replaceable_part(facts.type)); }
 
-std::string doubt(CauseKind cause) {
-    switch (cause) {
-        case CauseKind::instrument: return "Check the instruments first: the readings contradict each other.";
-        case CauseKind::wear_or_instrument:
-            return "Wear or instrument, not yet separable: check the flow meter with a reference test.";
-        case CauseKind::oil_or_operation: return "Check oil and settings first: the change came with one of them.";
-        default: return {};
-    }
-}
-
 std::string wear_action(const SentenceFacts& facts) {
     switch (facts.verdict.level) {
         case Level::watch: return "Watch it; nothing to order yet.";
@@ -124,19 +132,71 @@ std::string wear_action(const SentenceFacts& facts) {
     }
 }
 
+std::string not_separable(const SentenceFacts& facts) {
+    std::string action = "Wear or instrument, not yet separable: check the flow meter with a reference test";
+    if (facts.verdict.level < Level::plan) return action + ".";
+    std::string then = wear_action(facts);
+    then[0] = static_cast<char>(std::tolower(static_cast<unsigned char>(then[0])));
+    return action + "; if it agrees, " + then;
+}
+
+std::string look_at_instruments(const SentenceFacts& facts) {
+    const std::vector<analytics::RankedCause>& causes = facts.verdict.causes;
+    if (causes.empty() || !is_instrument(causes.front().kind)) return "Check the instruments first.";
+    return "Check the instruments first: " + title_of(causes.front(), facts.type, facts.basis) + ".";
+}
+
+// What goes before replacing anything; empty where nothing does.
+std::string first_look(const SentenceFacts& facts) {
+    const CauseKind cause = facts.verdict.cause;
+    if (is_instrument(cause)) return look_at_instruments(facts);
+    switch (cause) {
+        case CauseKind::wear_or_instrument: return "Wear or instrument, not yet separable: check the flow meter with a "
+                                                   "reference test.";
+        case CauseKind::wear:
+            return wear_or_instrument(facts.verdict.causes) ? not_separable(facts) : std::string();
+        case CauseKind::oil_or_operation: return "Check oil and settings first: the change came with one of them.";
+        case CauseKind::internal_return:
+        case CauseKind::bypass:
+            return "Rule out a valve that passes between pump and meter; if none does, have the pump opened.";
+        case CauseKind::thin_oil: return "Check oil temperature and grade first.";
+        case CauseKind::compensator: return "Check the compensator's setting first.";
+        case CauseKind::inlet_starvation: return "Check suction line, strainer and oil level first.";
+        case CauseKind::blocked_drain: return "Check the drain line and its filter first.";
+        case CauseKind::vanes: return "Check first whether delivery comes back with warm oil.";
+        case CauseKind::air_in_oil: return "Look for foam in the tank and air drawn in at the suction line first.";
+        default: return {};
+    }
+}
+
 }  // namespace
+
+std::string compared_with(analytics::BaselineKind baseline, bool from_new, const std::string& began) {
+    using analytics::BaselineKind;
+    if (from_new) return "what it did when new";
+    switch (baseline) {
+        case BaselineKind::maker_test: return "what its maker measured when it was new";
+        case BaselineKind::reference_test: return "what a reference test showed when it was as new";
+        case BaselineKind::sisters: return "what its sisters do when healthy";
+        case BaselineKind::from_new: return "what it did when new";
+        case BaselineKind::watching_began: break;
+    }
+    return "what it did when watching began (" + began + ")";
+}
 
 std::string what_to_do(const SentenceFacts& facts) {
     if (!facts.silent_since.empty()) return "Check its feed.";
     if (facts.verdict.level == Level::unjudged) {
         if (facts.verdict.reason == UnjudgedReason::no_temperature)
             return "Fit a temperature sensor at its inlet, or give the tank's thermometer to its reservoir.";
+        if (facts.verdict.reason == UnjudgedReason::instrument) return look_at_instruments(facts);
         const bool sensors = facts.verdict.reason == UnjudgedReason::no_basis ||
                              facts.verdict.reason == UnjudgedReason::shared_drain;
         return sensors ? "Fit a flow meter of its own to have it judged." : "Keep its readings coming.";
     }
-    const std::string first = doubt(facts.verdict.cause);
-    if (facts.verdict.level == Level::sound || first.empty()) return wear_action(facts);
+    const std::string first = first_look(facts);
+    const bool speaks_of_wear = facts.verdict.cause <= CauseKind::wear_or_instrument;
+    if (first.empty() || (facts.verdict.level == Level::sound && speaks_of_wear)) return wear_action(facts);
     return first;
 }
 

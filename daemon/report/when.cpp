@@ -1,5 +1,6 @@
 #include "daemon/report/when.hpp"
 
+#include <fmt/format.h>
 #include <date/date.h>
 #include <date/tz.h>
 
@@ -31,6 +32,17 @@ std::optional<analytics::Instant> instant_of(const std::string& text) {
 
 std::string local_minute(analytics::Instant at, const std::string& zone) {
     return date::format("%F %H:%M %Z", in_zone(at, zone));
+}
+
+std::string local_second(analytics::Instant at, const std::string& zone) {
+    const date::zoned_time<std::chrono::seconds> local(date::locate_zone(zone),
+                                                       std::chrono::floor<std::chrono::seconds>(at));
+    return date::format("%F %T %Z", local);
+}
+
+std::string span_words(analytics::Milliseconds span) {
+    const double seconds = std::chrono::duration<double>(span).count();
+    return seconds < 120.0 ? fmt::format("{:g} s", seconds) : fmt::format("{:g} min", seconds / 60.0);
 }
 
 std::string local_date(analytics::Instant at, const std::string& zone) { return date::format("%F", in_zone(at, zone)); }

@@ -19,6 +19,12 @@ std::optional<analytics::Instant> instant_of(const std::string& text);
 // "2026-03-01 07:00 CET". `zone` must be known to the tz database.
 std::string local_minute(analytics::Instant at, const std::string& zone);
 
+// "2026-03-01 07:00:05 CET", for single readings.
+std::string local_second(analytics::Instant at, const std::string& zone);
+
+// "90 s", "15 min".
+std::string span_words(analytics::Milliseconds span);
+
 // "2026-03-01", the plant's day in which the instant lies.
 std::string local_date(analytics::Instant at, const std::string& zone);
 

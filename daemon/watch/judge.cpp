@@ -4,6 +4,7 @@
 
 #include "daemon/watch/notices.hpp"
 #include "daemon/watch/section_days.hpp"
+#include "daemon/watch/sisters.hpp"
 #include "daemon/watch/track_run.hpp"
 
 namespace slipledger::watch {
@@ -42,6 +43,8 @@ Span changed_by(const ledger::Mark& mark, std::span<const ledger::Event> events,
     return changed;
 }
 
+constexpr std::int32_t before_all_days = -1'000'000;
+
 // Threads: one pass, then gone.
 class PumpPass {
 public:
@@ -49,15 +52,45 @@ public:
              const config::Pump& pump, const PlantDays& days, const PassSpan& pass, Instant oldest,
              std::vector<ledger::Event> events)
         : reader_(reader), plant_(plant), directory_(directory), pump_(pump), days_(days), pass_(pass), oldest_(oldest),
-          events_(std::move(events)), told_(reader.notices(pump.id)),
-          facts_(reader.day_facts(directory.pumps.at(pump.id), pass.first_date - analytics::usual_days,
+          events_(std::move(events)), sisters_(reader, plant, directory), told_(reader.notices(pump.id)),
+          facts_(reader.day_facts(directory.pumps.at(pump.id), first_date_needed() - analytics::usual_days,
                                   pass.last_date + 1)) {}
 
     void run(ledger::AnalysisResult& result) {
         for (const config::Section& section : pump_.sections) judge(section, result);
+        mark_told_otherwise(result);
     }
 
 private:
+    // The estimate is led on from a checkpoint that may lie weeks before the pass, over days whose facts count again.
+    std::int32_t first_date_needed() const {
+        std::int32_t first = pass_.first_date;
+        for (const ledger::TrackEntry& track : directory_.tracks) {
+            if (track.pump_name != pump_.id) continue;
+            const auto checkpoint = reader_.checkpoint_before(track.id, pass_.first_date);
+            if (checkpoint) first = std::min(first, checkpoint->date);
+            else if (reader_.last_day(track.id)) first = before_all_days;
+        }
+        return first;
+    }
+
+    static std::vector<FreshDays> fresh_days(const ledger::AnalysisResult& result) {
+        std::vector<FreshDays> fresh;
+        for (const ledger::TrackResult& track : result.tracks) fresh.push_back({track.track, track.from_date, track.days});
+        return fresh;
+    }
+
+    // Lives that were told of this pump what it no longer says: their pumps are marked with what is stored of this one.
+    void mark_told_otherwise(ledger::AnalysisResult& result) const {
+        std::vector<ledger::LifePriorRecord> priors;
+        for (const ledger::TrackResult& track : result.tracks)
+            priors.insert(priors.end(), track.life_priors.begin(), track.life_priors.end());
+        for (const ledger::LifePriorRecord& prior : sisters_.told_otherwise(priors, fresh_days(result))) {
+            const auto track = std::ranges::find(directory_.tracks, prior.track, &ledger::TrackEntry::id);
+            result.told_otherwise.push_back({track->pump, prior.begins});
+        }
+    }
+
     FactsByDate stored_facts(const std::string& section) const {
         FactsByDate facts;
         for (const ledger::DayFactsRecord& record : facts_)
@@ -66,11 +99,18 @@ private:
     }
 
     void judge(const config::Section& section, ledger::AnalysisResult& result) {
-        SectionView view{plant_, days_, pass_, stretches_of(pump_, section, events_, oldest_), stored_facts(section.id)};
+        SectionView view{plant_,
+                         days_,
+                         pass_,
+                         stretches_of(pump_, section, events_, oldest_),
+                         tests_of(events_, section.id),
+                         stored_facts(section.id)};
         const RemadeSummaries remade = remake_summaries(reader_, directory_, pump_, section, view);
         result.day_facts.insert(result.day_facts.end(), remade.facts.begin(), remade.facts.end());
-        TrackRun drain = run_track(reader_, track(section, Basis::case_drain), view, remade);
-        TrackRun delivery = run_track(reader_, track(section, Basis::delivery), view, remade);
+        const std::vector<FreshDays> fresh = fresh_days(result);
+        const SistersAsked sisters{sisters_, fresh};
+        TrackRun drain = run_track(reader_, track(section, Basis::case_drain), view, remade, sisters);
+        TrackRun delivery = run_track(reader_, track(section, Basis::delivery), view, remade, sisters);
         add_days_without_basis(drain, delivery, view, remade);
         keep(section, view, std::move(drain), result);
         keep(section, view, std::move(delivery), result);
@@ -149,6 +189,7 @@ private:
     const PassSpan& pass_;
     Instant oldest_;
     std::vector<ledger::Event> events_;
+    Sisters sisters_;
     std::vector<ledger::Notice> told_;
     std::vector<ledger::DayFactsRecord> facts_;
 };
@@ -170,7 +211,7 @@ ledger::AnalysisResult judge_pump(const ledger::Reader& reader, const config::Pl
     input.lateness = plant.lateness;
     input.oldest = *oldest;
     input.newest = *newest;
-    std::vector<ledger::Event> events = reader.events(pump->id);
+    std::vector<ledger::Event> events = ledger::events_concerning(*pump, reader.events(pump->id));
     input.mark = changed_by(mark, events, *newest);
     input.stored_until = stored_until(reader, directory, pump->id);
     const auto pass = pass_span(input, days);

@@ -39,15 +39,15 @@ report::SentenceFacts sentence_facts(const NoticeContext& context, const DayVerd
     facts.section = context.section.id;
     facts.only_section = context.pump.sections.size() == 1;
     facts.basis = context.basis;
-    if (!stretch.watched_from_new)
-        facts.compared_with = "when watching began (" +
-                              report::local_date(context.first_reading, context.plant.time_zone) + ")";
+    facts.compared_with = report::compared_with(day.baseline, stretch.watched_from_new,
+                                                report::local_date(context.first_reading, context.plant.time_zone));
     facts.temperature_known = context.temperature_known;
     facts.least_judged_h = stretch.section.baseline.min_h;
     facts.act_ratio = stretch.section.limits.leakage_ratio.act.value_or(analytics::unknown);
     facts.act_points_lost = stretch.section.limits.efficiency_points.act.value_or(analytics::unknown);
     facts.act_drain_share_percent = stretch.section.limits.drain_share_percent.act.value_or(analytics::unknown);
     facts.spare_in_stock = stretch.section.spare && stretch.section.spare->in_stock > 0;
+    facts.time_zone = context.plant.time_zone;
     facts.verdict = day;
     return facts;
 }
@@ -74,6 +74,9 @@ RuleWords words_of(analytics::Rule rule) {
             return {"inlet vacuum", " bar", "Check the suction line, strainer and oil level."};
         case analytics::Rule::instrument_suspect:
             return {"doubt about an instrument", "", "Check the instruments: the readings contradict each other."};
+        case analytics::Rule::unrecorded_replacement:
+            return {"leakage fell as if the part had been replaced, to a ratio of", "",
+                    "If the part was replaced, say so: `slipledger replaced`; `slipledger health` gives the time."};
     }
     return {"", "", ""};
 }

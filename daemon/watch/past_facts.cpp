@@ -84,6 +84,11 @@ void take_section(const json& facts, config::Section& section) {
 
 }  // namespace
 
+config::Fluid with_fluid_facts(config::Fluid fluid, std::string_view text) {
+    const json facts = json::parse(text, nullptr, false);
+    return facts.is_object() ? fluid_of(facts, std::move(fluid)) : fluid;
+}
+
 config::Pump with_facts(config::Pump pump, std::string_view text) {
     const json facts = json::parse(text, nullptr, false);
     if (!facts.is_object()) return pump;

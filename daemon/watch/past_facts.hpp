@@ -12,4 +12,7 @@ namespace slipledger::watch {
 // tell stays as it is today.
 config::Pump with_facts(config::Pump today, std::string_view facts);
 
+// `fluid` with what `facts`, the fluid's part of such a text, tells of another oil laid over it.
+config::Fluid with_fluid_facts(config::Fluid fluid, std::string_view facts);
+
 }  // namespace slipledger::watch

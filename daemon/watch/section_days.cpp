@@ -27,12 +27,6 @@ bool has_reading(const analytics::Series& series, const Span& span) {
     return first != series.times.end() && *first < span.to;
 }
 
-SeenSensors seen_in(const analytics::SectionReadings& readings, const Span& summary) {
-    const Span span{summary.from - analytics::summary_lead_in, summary.to};
-    return {has_reading(readings[index_of(Quantity::shaft_speed)], span),
-            has_reading(readings[index_of(Quantity::fluid_temperature)], span)};
-}
-
 // Threads: one pass, then gone.
 class Remaking {
 public:
@@ -56,18 +50,13 @@ private:
         if (view_.pass.is_finished(day)) take_facts(day);
     }
 
-    Usual usual_of(const FactsByDate& facts, std::int32_t date, const Stretch& stretch,
-                   const analytics::SectionSpec& spec) const {
-        return analytics::usual_from(facts_before(facts, date), spec, given_holds(stretch.section));
-    }
-
     bool usual_changed(const Span& closed, const DaySpan& day) const {
         if (facts_before(view_.facts, day.date) == facts_before(stored_, day.date)) return false;
         for (std::size_t i = stretch_at(view_.stretches, closed.from); i < view_.stretches.size(); ++i) {
             const Stretch& stretch = view_.stretches[i];
             if (stretch.from >= closed.to) break;
             const analytics::SectionSpec spec = view_.spec(stretch, day, {});
-            if (usual_of(view_.facts, day.date, stretch, spec) != usual_of(stored_, day.date, stretch, spec)) return true;
+            if (usual_on(view_.facts, view_.days, day.date, stretch, spec) != usual_on(stored_, view_.days, day.date, stretch, spec)) return true;
         }
         return false;
     }
@@ -92,7 +81,7 @@ private:
             const Span piece = common(span, {stretch.from, stretch.to});
             if (piece.empty()) break;
             const analytics::SectionSpec spec = view_.spec(stretch, day, seen);
-            const Usual usual = usual_of(view_.facts, day.date, stretch, spec);
+            const Usual usual = usual_on(view_.facts, view_.days, day.date, stretch, spec);
             for (const Basis basis : both_bases) {
                 if (readings[index_of(flow_quantity(basis))].times.empty()) continue;
                 std::vector<Summary> made = analytics::summarise(readings, spec, usual, basis, stretch.life.number,
@@ -131,6 +120,24 @@ std::optional<SeenSensors> seen_before(const FactsByDate& facts, std::int32_t da
         seen.temperature = seen.temperature || day.interval_s[index_of(Quantity::fluid_temperature)] > 0.0;
     }
     return any ? std::optional(seen) : std::nullopt;
+}
+
+Usual usual_on(const FactsByDate& facts, const PlantDays& days, std::int32_t date, const Stretch& stretch,
+               const analytics::SectionSpec& spec) {
+    std::vector<DayFacts> before = facts_before(facts, date);
+    if (stretch.setting_since) {
+        const std::int32_t set_on = days.day_of(*stretch.setting_since).date;
+        auto day = facts.lower_bound(date - analytics::usual_days);
+        for (DayFacts& one : before)
+            if ((day++)->first <= set_on) one.plateau_bar = 0.0;
+    }
+    return analytics::usual_from(before, spec, given_holds(stretch.section));
+}
+
+SeenSensors seen_in(const analytics::SectionReadings& readings, const Span& summary) {
+    const Span span{summary.from - analytics::summary_lead_in, summary.to};
+    return {has_reading(readings[index_of(Quantity::shaft_speed)], span),
+            has_reading(readings[index_of(Quantity::fluid_temperature)], span)};
 }
 
 analytics::SectionSpec SectionView::spec(const Stretch& stretch, const DaySpan& day, const SeenSensors& seen) const {

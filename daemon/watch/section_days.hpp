@@ -26,12 +26,22 @@ using FactsByDate = std::map<std::int32_t, analytics::DayFacts>;
 // Which of speed and temperature readings of the seven days before a date tell; nullopt: there are none yet.
 std::optional<SeenSensors> seen_before(const FactsByDate& facts, std::int32_t date);
 
+// What is usual on a day, as the seven days before it tell. A plateau seen under another setting is none of this one's, and
+// on the day of the change both were seen.
+analytics::Usual usual_on(const FactsByDate& facts, const PlantDays& days, std::int32_t date, const Stretch& stretch,
+                          const analytics::SectionSpec& spec);
+
+// Which of speed and temperature readings around one summary tell: what counts in the first days, of which no day before
+// tells anything.
+SeenSensors seen_in(const analytics::SectionReadings& readings, const Span& summary);
+
 // One section as a pass sees it; the same for both sides of the pass. Threads: immutable while the pass runs.
 struct SectionView {
     const config::Plant& plant;
     const PlantDays& days;
     const PassSpan& pass;
     std::vector<Stretch> stretches;
+    std::vector<DatedTest> tests;  // reference tests, ascending
     FactsByDate facts;  // by the end of the pass; reaches back over the days before it
 
     analytics::SectionSpec spec(const Stretch& stretch, const analytics::DaySpan& day, const SeenSensors& seen) const;

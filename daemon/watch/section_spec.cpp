@@ -11,19 +11,6 @@ using analytics::Quantity;
 using analytics::SectionSpec;
 using analytics::unknown;
 
-analytics::Fluid fluid_of(const config::Fluid& fluid) {
-    const analytics::FluidTraits traits{fluid.density_15_kgm3, fluid.minimum_cst, fluid.maximum_cst,
-                                        fluid.bulk_modulus_gpa};
-    const auto point = [&](std::size_t i) {
-        return analytics::ViscosityAt{fluid.points[i].temperature_c, fluid.points[i].viscosity_cst};
-    };
-    const auto made = fluid.points.size() == 2
-                          ? analytics::Fluid::from_points(point(0), point(1), traits)
-                          : analytics::Fluid::from_grade(fluid.iso_vg.value_or(46.0),
-                                                         fluid.viscosity_index.value_or(100.0), traits);
-    return made.value_or(analytics::Fluid());  // the reader has refused oils that cannot be
-}
-
 analytics::DutyPoint duty_of(const config::Duty& duty) {
     return {duty.pressure_bar, duty.speed_rpm, duty.fluid_temperature_c};
 }
@@ -84,7 +71,7 @@ void lay_pump(SectionSpec& spec, const config::Pump& pump) {
     spec.motor_slip_at_rated = pump.motor.slip_at_rated;
     spec.settling = pump.settling;
     spec.steady = {pump.steady.pressure_bar_per_s, pump.steady.speed_rpm_per_s, pump.steady.temperature_c_per_min};
-    spec.fluid = fluid_of(pump.fluid);
+    spec.fluid = oil_of(pump.fluid).value_or(analytics::Fluid());  // the reader has refused oils that cannot be
 }
 
 void lay_section(SectionSpec& spec, const config::Section& section) {
@@ -114,6 +101,25 @@ void lay_life(SectionSpec& spec, const config::Section& section, const ledger::L
 }
 
 }  // namespace
+
+void heed_as_new(SectionSpec& spec, const analytics::ReferenceTest& test) {
+    const auto tested = analytics::tested_leakage(test, spec);
+    if (!tested || !(tested->leakage_lpm > 0.0)) return;
+    const double accuracy = tested->sd_lpm / tested->leakage_lpm;
+    if (spec.maker_test && spec.maker_test->accuracy <= accuracy) return;
+    spec.maker_test = analytics::MakerTest{tested->leakage_lpm, test.at, test.viscosity_cst, accuracy, true};
+}
+
+std::optional<analytics::Fluid> oil_of(const config::Fluid& fluid) {
+    const analytics::FluidTraits traits{fluid.density_15_kgm3, fluid.minimum_cst, fluid.maximum_cst,
+                                        fluid.bulk_modulus_gpa};
+    const auto point = [&](std::size_t i) {
+        return analytics::ViscosityAt{fluid.points[i].temperature_c, fluid.points[i].viscosity_cst};
+    };
+    if (fluid.points.size() == 2) return analytics::Fluid::from_points(point(0), point(1), traits);
+    return analytics::Fluid::from_grade(fluid.iso_vg.value_or(analytics::unknown),
+                                        fluid.viscosity_index.value_or(analytics::unknown), traits);
+}
 
 std::optional<Instant> second_next_stop(const config::Plant& plant, const std::string& area, Instant at) {
     bool passed_one = false;

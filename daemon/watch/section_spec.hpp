@@ -5,6 +5,7 @@
 #include <array>
 #include <optional>
 
+#include "analytics/reference_test.hpp"
 #include "analytics/section_spec.hpp"
 #include "analytics/usual.hpp"
 #include "config/plant.hpp"
@@ -24,6 +25,12 @@ struct SeenSensors {
 analytics::SectionSpec section_spec_of(const config::Plant& plant, const config::Pump& pump,
                                        const config::Section& section, const ledger::Life& life, bool watched_from_new,
                                        const SeenSensors& seen, analytics::Instant day);
+
+// A reference test of the part as new stands for its maker's test where it is the surer of the two.
+void heed_as_new(analytics::SectionSpec& spec, const analytics::ReferenceTest& test);
+
+// The oil in analysis' terms; nullopt where it can be none.
+std::optional<analytics::Fluid> oil_of(const config::Fluid& fluid);
 
 // The second shutdown from `at` on that stops machines of this area.
 std::optional<analytics::Instant> second_next_stop(const config::Plant& plant, const std::string& area,

@@ -38,9 +38,9 @@ std::vector<Summary> summaries_from(const ledger::Reader& reader, const ledger::
 class Running {
 public:
     Running(const ledger::Reader& reader, const ledger::TrackEntry& track, const SectionView& view,
-            const RemadeSummaries& remade)
-        : reader_(reader), track_(track), view_(view), course_(track.basis), emit_from_(view.pass.from),
-          emit_date_(view.pass.first_date) {
+            const RemadeSummaries& remade, const SistersAsked& sisters)
+        : reader_(reader), track_(track), view_(view), sisters_(sisters), course_(track.basis),
+          emit_from_(view.pass.from), emit_date_(view.pass.first_date) {
         take_up(remade);
     }
 
@@ -54,6 +54,17 @@ public:
         run_.result.from_date = emit_date_;
         keep_changes_at_seam();
         return std::move(run_);
+    }
+
+    std::optional<Replay> replay(const ledger::SummaryRecord& until) {
+        if (next_ == summaries_.size()) return std::nullopt;
+        for (std::int32_t date = first_date(); date < until.date; ++date) take_day(date, until.date);
+        const DaySpan day = view_.days.day(until.date);
+        adopt_inputs(day);
+        analytics::SummaryVerdict verdict;
+        for (; next_ < summaries_.size() && summaries_[next_].start <= until.summary.start; ++next_)
+            verdict = take(summaries_[next_], day);
+        return Replay{std::move(course_), spec(day), verdict, day};
     }
 
 private:
@@ -75,8 +86,11 @@ private:
 
     bool restore(const ledger::CheckpointRecord& checkpoint) {
         const DaySpan day = view_.days.day(checkpoint.date);
-        stretch_ = stretch_at(view_.stretches, view_.pass.summaries_of(day).to - tick);
-        inputs_ = inputs_of(day);
+        const Instant end = view_.pass.summaries_of(day).to - tick;
+        stretch_ = stretch_at(view_.stretches, end);
+        next_test_ = first_test_after(end);
+        inputs_ = inputs_of(day, day.begin);
+        if (const auto prior = reader_.life_prior(track_.id, stretch().life.number)) heed(prior->sisters);
         auto restored = Course::restore(checkpoint.state, spec(day));
         if (restored) course_ = std::move(*restored);
         return restored.has_value();
@@ -98,21 +112,59 @@ private:
     struct DayInputs {
         SeenSensors seen;
         std::optional<Instant> stop;
+        std::optional<std::size_t> as_new;  // reference test of the part as it was new
 
         bool operator==(const DayInputs&) const = default;
     };
 
-    DayInputs inputs_of(const DaySpan& day) const {
+    DayInputs inputs_of(const DaySpan& day, Instant told_by) const {
         return {seen_before(view_.facts, day.date).value_or(SeenSensors{}),
-                second_next_stop(view_.plant, stretch().pump.area, day.begin)};
+                second_next_stop(view_.plant, stretch().pump.area, day.begin), as_new_test(told_by)};
+    }
+
+    // The newest test of the life's part as new that was made by then.
+    std::optional<std::size_t> as_new_test(Instant by) const {
+        std::optional<std::size_t> found;
+        for (std::size_t i = 0; i < view_.tests.size() && view_.tests[i].at <= by; ++i) {
+            const DatedTest& dated = view_.tests[i];
+            if (dated.test.as_new && dated.test.of == track_.basis && stretch().life.covers(dated.at)) found = i;
+        }
+        return found;
+    }
+
+    std::size_t first_test_after(Instant at) const {
+        return static_cast<std::size_t>(std::ranges::upper_bound(view_.tests, at, {}, &DatedTest::at) - view_.tests.begin());
     }
 
     const Stretch& stretch() const { return view_.stretches[stretch_]; }
-    analytics::SectionSpec spec(const DaySpan& day) const { return view_.spec(stretch(), day, inputs_.seen); }
+
+    analytics::SectionSpec spec(const DaySpan& day) const {
+        analytics::SectionSpec spec = view_.spec(stretch(), day, inputs_.seen);
+        if (inputs_.as_new) heed_as_new(spec, view_.tests[*inputs_.as_new].test);
+        spec.sisters = analytics::sisters_figure(told_, spec);
+        spec.life_prior = life_prior_;
+        return spec;
+    }
+
+    void heed(const std::string& told) {
+        told_ = sisters_in(told);
+        life_prior_ = analytics::life_prior(past_lives_in(told));
+    }
+
+    // Asks the sisters for a life that begins at `at`, and keeps with it what they say.
+    void ask_sisters(Instant at) {
+        const AskingLife asking{track_, stretch().life.number, model_of(stretch()), view_.days.day_of(at).date};
+        std::vector<FreshDays> fresh(sisters_.fresh.begin(), sisters_.fresh.end());
+        fresh.push_back({track_.id, emit_date_, run_.result.days});
+        const std::string told = sisters_.sisters.told_to(asking, fresh);
+        heed(told);
+        if (asking.model.empty() || asking.date < emit_date_) return;
+        run_.result.life_priors.push_back({track_.id, asking.life, asking.date, at, asking.model, told});
+    }
 
     // Put down and taken up again with other inputs: the estimate goes on as if nothing had happened, since nothing has.
     void adopt_inputs(const DaySpan& day) {
-        const DayInputs inputs = inputs_of(day);
+        const DayInputs inputs = inputs_of(day, day.begin);
         if (inputs == inputs_ || !run_.began) return;
         inputs_ = inputs;
         collect_changes();
@@ -143,20 +195,35 @@ private:
 
     void begin(const DaySpan& day, Instant at) {
         stretch_ = stretch_at(view_.stretches, at);
-        inputs_ = inputs_of(day);
+        next_test_ = first_test_after(at);
+        inputs_ = inputs_of(day, at);
+        ask_sisters(at);
         course_.begin_life({stretch().life.number, stretch().life.since.value_or(at)}, spec(day));
         run_.began = day.date;
     }
 
+    // Facts and tests in the order of their times, up to `at`.
     void go_on_to(const DaySpan& day, Instant at) {
         while (stretch().to <= at) {
-            const std::int32_t life = stretch().life.number;
-            ++stretch_;
-            if (stretch().life.number != life)
-                course_.begin_life({stretch().life.number, stretch().from}, spec(day));
-            else
-                course_.change_facts(stretch().from, spec(day));
+            take_tests(stretch().to - tick);
+            go_on_to_next_stretch(day);
         }
+        take_tests(at);
+    }
+
+    void take_tests(Instant to) {
+        for (; next_test_ < view_.tests.size() && view_.tests[next_test_].at <= to; ++next_test_)
+            course_.reference_test(view_.tests[next_test_].at, view_.tests[next_test_].test);
+    }
+
+    void go_on_to_next_stretch(const DaySpan& day) {
+        const std::int32_t life = stretch().life.number;
+        ++stretch_;
+        const Instant from = stretch().from;
+        if (stretch().life.number == life) return course_.change_facts(from, spec(day), stretch().begins_with);
+        inputs_.as_new = as_new_test(from);
+        ask_sisters(from);
+        course_.begin_life({stretch().life.number, from}, spec(day));
     }
 
     void take_day(std::int32_t date, std::int32_t last_finished) {
@@ -177,22 +244,27 @@ private:
             run_.result.checkpoints.push_back({date, course_.checkpoint()});
     }
 
-    void take(const Summary& summary, const DaySpan& day) {
+    analytics::SummaryVerdict take(const Summary& summary, const DaySpan& day) {
         if (!run_.began) begin(day, summary.start);
         go_on_to(day, summary.start);
         const analytics::SummaryVerdict verdict = course_.take(summary);
         if (summary.start >= emit_from_) run_.result.summaries.push_back({summary, verdict, day.date});
+        return verdict;
     }
 
     const ledger::Reader& reader_;
     const ledger::TrackEntry& track_;
     const SectionView& view_;
+    const SistersAsked& sisters_;
     Course course_;
     Instant emit_from_;
     std::int32_t emit_date_;
     std::optional<std::int32_t> next_date_;
     std::optional<Instant> seam_;  // end of the checkpoint's day
     std::size_t stretch_ = 0;
+    std::size_t next_test_ = 0;  // of view_.tests: not yet taken
+    std::vector<analytics::Sister> told_;  // of the life in service
+    analytics::LifePrior life_prior_;      // the same of lives that are over
     DayInputs inputs_;
     std::vector<Summary> summaries_;
     std::size_t next_ = 0;
@@ -202,8 +274,13 @@ private:
 }  // namespace
 
 TrackRun run_track(const ledger::Reader& reader, const ledger::TrackEntry& track, const SectionView& view,
-                   const RemadeSummaries& remade) {
-    return Running(reader, track, view, remade).run();
+                   const RemadeSummaries& remade, const SistersAsked& sisters) {
+    return Running(reader, track, view, remade, sisters).run();
+}
+
+std::optional<Replay> replay_track(const ledger::Reader& reader, const ledger::TrackEntry& track,
+                                   const SectionView& view, const ledger::SummaryRecord& until) {
+    return Running(reader, track, view, {}).replay(until);
 }
 
 }  // namespace slipledger::watch

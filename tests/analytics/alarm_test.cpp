@@ -100,6 +100,39 @@ TEST(Alarm, EndsWithTheLifeItBelongsTo) {
     EXPECT_EQ(state.level(), Level::unjudged);
 }
 
+// reference: HeldAlarm::judge - hand-worked: held, it neither begins nor worsens, and shows what it stands at when let go
+TEST(Alarm, HeldBackNeitherBeginsNorWorsensAndComesWhenLetGo) {
+    const Ladder ladder{.watch = 1.0, .plan = 2.0, .act = 3.0};
+    HeldAlarm alarm;
+    const auto judged = [&](int minute, double value, bool held) {
+        return alarm.judge(Rule::leakage_ratio, judge_ladder(value, ladder), ladder, {}, start + minutes(minute), held);
+    };
+    EXPECT_FALSE(judged(0, 2.5, true));
+    EXPECT_EQ(alarm.level(), Level::unjudged);
+    EXPECT_EQ(alarm.unheld(), Level::plan);
+    const auto raised = judged(1, 2.5, false);
+    ASSERT_TRUE(raised);
+    EXPECT_EQ(raised->edge, AlarmEdge::raised);
+    EXPECT_EQ(raised->level, Level::plan);
+    EXPECT_EQ(raised->began, start + minutes(1));
+    EXPECT_DOUBLE_EQ(raised->limit, 2.0);
+    EXPECT_FALSE(judged(2, 3.5, true));
+    EXPECT_EQ(alarm.level(), Level::plan);
+    EXPECT_EQ(judged(3, 1.5, true)->edge, AlarmEdge::eased);
+    EXPECT_EQ(judged(4, 0.5, true)->edge, AlarmEdge::returned);
+}
+
+// reference: HeldAlarm::end - hand-worked: one that shows is ended, one that is held back never was told
+TEST(Alarm, HeldBackEndsUntoldWithItsLife) {
+    const Ladder ladder{.watch = 1.0};
+    HeldAlarm alarm;
+    alarm.judge(Rule::leakage_ratio, judge_ladder(2.0, ladder), ladder, {}, start, true);
+    EXPECT_FALSE(alarm.end(Rule::leakage_ratio, start + minutes(5)));
+    EXPECT_EQ(alarm.unheld(), Level::unjudged);
+    alarm.judge(Rule::leakage_ratio, judge_ladder(2.0, ladder), ladder, {}, start, false);
+    EXPECT_EQ(alarm.end(Rule::leakage_ratio, start + minutes(5))->edge, AlarmEdge::returned);
+}
+
 TEST(Alarm, IsNeverRaisedWhereThereIsNoLimit) {
     const RuleJudgement judgement = judge_ladder(1.0e6, Ladder{});
     EXPECT_EQ(judgement.beyond, Level::unjudged);

@@ -121,6 +121,177 @@ TEST(Course, AttributesAStepToTheChangeOfTheSameHour) {
     EXPECT_EQ(course.quote(simulated_day(119)).cause, CauseKind::oil_or_operation);
 }
 
+// Splices two sections made from one seed: the second from day `day` on, told or not.
+std::vector<SimulatedHour> spliced(const SimulatedSection& first, const SimulatedSection& then, int day) {
+    std::vector<SimulatedHour> hours = simulate(first);
+    const std::vector<SimulatedHour> later = simulate(then);
+    for (std::size_t i = 0; i < hours.size(); ++i)
+        if (hours[i].day >= day) hours[i] = later[i];
+    return hours;
+}
+
+const Fluid thinner = *Fluid::from_grade(32.0, 100.0);
+
+struct Told {
+    Ranged before;
+    Ranged after;
+    Level highest_after = Level::unjudged;
+};
+
+// Runs to day 100, tells of the change, runs to the end.
+Told tell_at_100(const SimulatedSection& section, const std::vector<SimulatedHour>& hours, const SectionSpec& spec,
+                 const FactChange& change) {
+    Course course = course_of(section);
+    Told told;
+    told.before = run_course(course, hours, 0, 100).back().leakage_ratio;
+    course.change_facts(simulated_day(100).begin, spec, change);
+    const auto days = run_course(course, hours, 100, section.days);
+    told.after = days.back().leakage_ratio;
+    told.highest_after = highest(days);
+    return told;
+}
+
+// reference: Course::change_facts - outside: truth of the simulation, ratio 1 whatever the oil: VG 46 before, VG 32 after
+TEST(Course, TakesAnotherOilForAnotherViscosityAndNotForWear) {
+    SimulatedSection before{.seed = 51, .days = 160};
+    SimulatedSection after = before;
+    after.oil = after.told_oil = thinner;
+    const Told told = tell_at_100(before, spliced(before, after, 100), after.spec(), {.oil = true, .oil_by_label = true});
+    EXPECT_NEAR(told.after.value / told.before.value, 1.0, 0.03);
+    EXPECT_EQ(told.highest_after, Level::sound);
+
+    SimulatedSection unknowing = before;  // the same oil, and nobody says so
+    unknowing.oil = thinner;
+    const Told silent = tell_at_100(before, spliced(before, unknowing, 100), before.spec(), {});
+    EXPECT_GT(silent.after.value, 1.3);
+}
+
+// reference: Course::change_facts - outside: truth of the simulation, an oil 7 % thinner than its label, within the grade
+TEST(Course, LearnsHowThickANewOilReallyIs) {
+    SimulatedSection before{.seed = 52, .days = 160};
+    SimulatedSection after = before;
+    after.told_oil = thinner;
+    after.oil = *Fluid::from_points({40.0, 0.93 * 32.0}, {100.0, thinner.kinematic_cst(100.0) * 0.95});
+    const auto hours = spliced(before, after, 100);
+    const Told told = tell_at_100(before, hours, after.spec(), {.oil = true, .oil_by_label = true});
+    EXPECT_NEAR(told.after.value / told.before.value, 1.0, 0.03);
+    EXPECT_EQ(told.highest_after, Level::sound);
+    const Told measured = tell_at_100(before, hours, after.spec(), {.oil = true});  // as if the figure were measured
+    EXPECT_GT(measured.after.value / measured.before.value, told.after.value / told.before.value + 0.01);
+}
+
+// reference: Course::change_facts - outside: truth of the simulation, ratio 1 under a meter that shows 25 % more
+TEST(Course, LearnsANewMetersGainInsteadOfWear) {
+    SimulatedSection before{.seed = 53, .days = 160};
+    SimulatedSection after = before;
+    after.meter_gain = 1.25;
+    const auto hours = spliced(before, after, 100);
+    FactChange meter;
+    meter.instruments = static_cast<std::uint16_t>(1U << index_of(Quantity::case_drain_flow));
+    const Told told = tell_at_100(before, hours, before.spec(), meter);
+    EXPECT_NEAR(told.after.value / told.before.value, 1.0, 0.04);
+    EXPECT_EQ(told.highest_after, Level::sound);
+    EXPECT_GE(tell_at_100(before, hours, before.spec(), {}).highest_after, Level::watch);
+}
+
+// The meter shows 40 % more from day 100 on, and somebody holds a bucket under the drain on day 120: 2.6 L/min, as healthy.
+// reference: Course::reference_test - outside: truth of the simulation, ratio 1 throughout
+TEST(Course, BelievesABucketBeforeTheMeterAndSaysThatTheMeterIsSuspect) {
+    SimulatedSection before{.seed = 54, .days = 180};
+    SimulatedSection after = before;
+    after.meter_gain = 1.4;
+    const auto hours = spliced(before, after, 100);
+    Course course = course_of(before);
+    run_course(course, hours, 0, 120);
+    ASSERT_GT(course.quote(simulated_day(119)).leakage_ratio.value, 1.3);
+    course.drain_alarm_changes();
+    course.reference_test(simulated_day(120).begin, {.flow_lpm = 2.6, .at = before.spec().reference});
+    EXPECT_NEAR(course.quote(simulated_day(120)).leakage_ratio.value, 1.0, 0.05);
+    const auto days = run_course(course, hours, 120, before.days);
+    EXPECT_NEAR(days.back().leakage_ratio.value, 1.0, 0.06);
+    EXPECT_EQ(days.back().level, Level::sound);
+    const auto changes = course.drain_alarm_changes();
+    EXPECT_TRUE(std::ranges::any_of(changes, [](const AlarmChange& change) {
+        return change.rule == Rule::instrument_suspect && change.edge == AlarmEdge::raised;
+    }));
+}
+
+// reference: Course::reference_test - hand-worked: a bucket that agrees leaves the ratio, another basis' test is not heard
+TEST(Course, IsConfirmedByATestThatAgrees) {
+    SimulatedSection section{.seed = 55, .days = 150};
+    section.ratio = [](double h) { return 1.0 + h / 4000.0; };
+    const auto hours = simulate(section);
+    Course course = course_of(section);
+    run_course(course, hours, 0, section.days);
+    const DayVerdict before = course.quote(simulated_day(150));
+    course.reference_test(simulated_day(150).begin, {.of = Basis::delivery, .flow_lpm = 90.0, .at = section.spec().reference});
+    EXPECT_EQ(course.quote(simulated_day(150)).leakage_ratio.value, before.leakage_ratio.value);
+    course.reference_test(simulated_day(150).begin,
+                          {.flow_lpm = 2.6 * hours.back().true_ratio, .at = section.spec().reference});
+    const DayVerdict after = course.quote(simulated_day(150));
+    EXPECT_NEAR(after.leakage_ratio.value, before.leakage_ratio.value, 0.05);
+    EXPECT_LT(after.leakage_ratio.high - after.leakage_ratio.low, before.leakage_ratio.high - before.leakage_ratio.low);
+}
+
+// A pump worn to 1.6 is taken over: beside itself it looks healthy, beside the maker's figure it does not.
+// reference: Course::begin_life - outside: truth of the simulation, ratio 1.6, the maker's 2.6 L/min when new
+TEST(Course, OfAWornPumpThatIsTakenOverIsHeldAgainstWhatIsToldOfNew) {
+    SimulatedSection section{.seed = 56, .days = 60};
+    section.ratio = [](double) { return 1.6; };
+    const auto hours = simulate(section);
+    Course alone = course_of(section);
+    const DayVerdict beside_itself = run_course(alone, hours, 0, section.days).back();
+    EXPECT_NEAR(beside_itself.leakage_ratio.value, 1.0, 0.05);
+    EXPECT_EQ(beside_itself.baseline, BaselineKind::watching_began);
+
+    SectionSpec told = section.spec();
+    told.sisters = SistersFigure{.leakage_lpm = 2.6, .sd = 0.16, .count = 4};
+    Course beside_sisters(section.basis);
+    beside_sisters.begin_life({.number = 1, .since = simulation_start}, told);
+    const DayVerdict day = run_course(beside_sisters, hours, 0, section.days).back();
+    EXPECT_EQ(day.baseline, BaselineKind::sisters);
+    EXPECT_GT(day.leakage_ratio.value, 1.35);
+    EXPECT_GT(day.leakage_ratio.high, 1.6);
+    EXPECT_LT(day.leakage_ratio.low, 1.6);
+}
+
+// reference: Course::finish_day - hand-worked: the law at the reference point is the healthy leakage there, 2.6 L/min
+TEST(Course, QuotesTheLawOfItsHealthyLeakage) {
+    const SimulatedSection section{.seed = 57, .days = 60};
+    Course course = course_of(section);
+    const DayVerdict day = run_course(course, simulate(section), 0, section.days).back();
+    EXPECT_NEAR(leakage_lpm(day.healthy, reference_state(section.spec())), 2.6, 0.1);
+    EXPECT_LT(day.healthy_sd, 0.1);
+}
+
+// reference: Course::take - outside: truth of the simulation, worn to 1.9 and replaced at running hour 1800 in silence
+TEST(Course, NoticesAReplacementThatNobodyTold) {
+    SimulatedSection section{.seed = 58, .days = 160};
+    section.ratio = [](double h) { return h < 1800.0 ? 1.0 + h / 2000.0 : 1.0; };
+    const auto hours = simulate(section);
+    const Instant replaced = hours[1800].summary.start;
+    Course course = course_of(section);
+    const auto days = run_course(course, hours, 0, section.days);
+    const LikelyReplacement likely = days.back().replacement;
+    ASSERT_TRUE(likely.at);
+    EXPECT_LE(std::chrono::abs(*likely.at - replaced), std::chrono::hours(2));
+    EXPECT_NEAR(likely.ratio_before, 1.85, 0.15);
+    EXPECT_LT(likely.ratio_after, 1.2);
+    const auto changes = course.drain_alarm_changes();
+    const auto told = std::ranges::find(changes, Rule::unrecorded_replacement, &AlarmChange::rule);
+    ASSERT_NE(told, changes.end());
+    EXPECT_EQ(told->edge, AlarmEdge::raised);
+    EXPECT_LE(told->at, replaced + std::chrono::hours(24));
+    EXPECT_FALSE(days[100].replacement.at);
+
+    Course other = course_of(section);
+    for (const SimulatedHour& hour : hours) {
+        if (hour.summary.start == replaced) other.change_facts(replaced, section.spec());
+        other.take(hour.summary);
+    }
+    EXPECT_FALSE(other.quote(simulated_day(159)).replacement.at) << "the change of the same hour explains it";
+}
+
 // reference: Course::begin_life - hand-worked: after a replacement the new life learns from 1 and old episodes are over
 TEST(Course, OfANewLifeBeginsAnew) {
     SimulatedSection section{.seed = 36, .days = 300};

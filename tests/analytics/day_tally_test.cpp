@@ -44,5 +44,19 @@ TEST(DayTally, OfADayWithNothingJudgedHasHoursOnly) {
     EXPECT_DOUBLE_EQ(day.running_h, 0.0);
 }
 
+// reference: DayTally::ln_ratio - hand-worked: (2 + 3 * 4) / (1.5 + 3 * 3) = 14 / 10.5
+TEST(DayTally, HasARatioOfItsOwn) {
+    DayTally tally;
+    EXPECT_TRUE(std::isnan(tally.ln_ratio()));
+    SummaryVerdict verdict;
+    verdict.leakage_lpm = 2.0;
+    verdict.excess_lpm = 0.5;
+    tally.add(verdict, unknown, 1.0);
+    verdict.leakage_lpm = 4.0;
+    verdict.excess_lpm = 1.0;
+    tally.add(verdict, unknown, 3.0);
+    EXPECT_NEAR(tally.ln_ratio(), std::log(14.0 / 10.5), 1e-12);
+}
+
 }  // namespace
 }  // namespace slipledger::analytics

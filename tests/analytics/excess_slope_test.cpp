@@ -22,6 +22,18 @@ TEST(ExcessSlope, TellsWearFromAConstant) {
     EXPECT_FALSE(seen(1.0, 1.0, 0.5).scales_with_leakage());
 }
 
+// reference: ExcessSlope::slope, slope_of - hand-worked: the line it was made from; 2 +- 0.1 is 1.8355 to 2.1645
+TEST(ExcessSlope, IsTheRatioOfWearAndOneOfAConstant) {
+    EXPECT_NEAR(seen(2.0, 0.0, 0.5).slope()->value, 2.0, 0.01);
+    EXPECT_NEAR(seen(1.0, 1.0, 0.5).slope()->value, 1.0, 0.01);
+    EXPECT_FALSE(ExcessSlope{}.slope());
+    EXPECT_NEAR(slope_of(2.0, 0.1).low, 1.8355, 1e-9);
+    EXPECT_NEAR(slope_of(2.0, 0.1).high, 2.1645, 1e-9);
+    ExcessSlope begun = seen(2.0, 0.0, 0.5);
+    begun.begin_anew();
+    EXPECT_FALSE(begun.slope());
+}
+
 TEST(ExcessSlope, DoesNotSayWhereOperationNeverVaried) {
     EXPECT_FALSE(seen(2.0, 0.0, 0.0).scales_with_leakage());
     EXPECT_FALSE(ExcessSlope{}.scales_with_leakage());

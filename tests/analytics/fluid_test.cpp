@@ -197,5 +197,26 @@ TEST(DynamicViscosity, IsKinematicTimesDensity) {
     EXPECT_TRUE(std::isnan(fluid.dynamic_pas(-300.0)));
 }
 
+// reference: Fluid::line - hand-worked: log10 log10 46.7 = 0.222539, log10 log10 7.46 = -0.059116, log10 of 313.15 and
+// 373.15 K 2.495752 and 2.571883: B = 0.281655 / 0.076131, A = 0.222539 + B x 2.495752
+TEST(ViscosityLine, IsTheStandardsThroughTheTwoPoints) {
+    const ViscosityLine line = Fluid().line();
+    EXPECT_NEAR(line.a, 9.45583, 2e-5);
+    EXPECT_NEAR(line.b, 3.69960, 2e-5);
+    EXPECT_EQ(line.one, (ViscosityAt{.temperature_c = 40.0, .viscosity_cst = 46.0}));
+    EXPECT_EQ(line.other, (ViscosityAt{.temperature_c = 100.0, .viscosity_cst = 6.76}));
+}
+
+TEST(ViscosityLine, GivesTheViscosityWithAPocketCalculator) {
+    const Fluid oil = *Fluid::from_points({.temperature_c = 20.0, .viscosity_cst = 180.0},
+                                          {.temperature_c = 80.0, .viscosity_cst = 13.0});
+    const ViscosityLine line = oil.line();
+    for (const double celsius : {-10.0, 20.0, 48.6, 80.0, 110.0}) {
+        const double w = line.a - line.b * std::log10(celsius + 273.15);
+        EXPECT_NEAR(std::pow(10.0, std::pow(10.0, w)) - 0.7, oil.kinematic_cst(celsius),
+                    1e-9 * oil.kinematic_cst(celsius));
+    }
+}
+
 }  // namespace
 }  // namespace slipledger::analytics

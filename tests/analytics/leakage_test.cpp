@@ -80,5 +80,19 @@ TEST(ClearanceGrowth, IsUnknownWithoutLeakageOrRatio) {
     EXPECT_TRUE(std::isnan(clearance_growth({1.0, 0.0, 0.0}, unknown)));
 }
 
+// reference: leakage_law, leakage_lpm - hand-worked: 2 x 0.0274 / 210, 0.3 / sqrt(210 / 853), 0.12 / 1480; then 150 bar at
+// 0.040 Pa s: 0.9786 + 0.2535 + 0.1200
+TEST(LeakageLaw, CarriesHealthyLeakageToAnotherPointAndOil) {
+    const LeakageState reference{210.0, 0.0274, 853.0, 1480.0};
+    const LeakageLaw law = leakage_law({2.0, 0.3, 0.12}, reference);
+    EXPECT_NEAR(law.laminar, 2.6095e-4, 1e-8);
+    EXPECT_NEAR(law.orifice, 0.60463, 1e-5);
+    EXPECT_NEAR(law.speed, 8.1081e-5, 1e-9);
+    EXPECT_NEAR(leakage_lpm(law, {150.0, 0.040, 853.0, 1480.0}), 1.3521, 1e-4);
+    EXPECT_NEAR(leakage_lpm(law, reference), 2.42, 1e-12);
+    EXPECT_TRUE(std::isnan(leakage_lpm({}, reference)));
+    EXPECT_TRUE(std::isnan(leakage_law({2.0, 0.3, 0.12}, {0.0, 0.0274, 853.0, 1480.0}).laminar));
+}
+
 }  // namespace
 }  // namespace slipledger::analytics

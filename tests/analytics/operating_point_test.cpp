@@ -3,6 +3,8 @@
 #include <gtest/gtest.h>
 
 #include <cmath>
+#include <map>
+#include <random>
 
 #include "tests/analytics/readings_builder.hpp"
 
@@ -78,6 +80,45 @@ TEST(OperatingPoints, OfASpanTakeReadingsFromBeforeItAndEndBeforeItsEnd) {
 TEST(OperatingPoints, HoldForAQuarterOfAnHourWhileNothingIsUsual) {
     EXPECT_EQ(hold_of(Usual{}, Quantity::outlet_pressure), Milliseconds{15min});
     EXPECT_EQ(hold_of(hold_all(90s), Quantity::outlet_pressure), Milliseconds{90s});
+}
+
+// The readings named as those behind a point are those the point was made of, whatever comes early, late or not at all.
+TEST(ReadingsBehind, AreWhatThePointIsMadeOf) {
+    std::mt19937 random(7);
+    SectionReadings readings;
+    for (const Quantity quantity : {Quantity::outlet_pressure, Quantity::shaft_speed, Quantity::case_drain_flow})
+        for (Milliseconds at{0}; at < 3h; at += Milliseconds(1000 + random() % 240000))
+            put(readings, quantity, at, static_cast<double>(random() % 1000));
+    const Usual usual = hold_all(2min);
+    const auto points = align(readings, Basis::case_drain, usual, midnight + 1h, midnight + 3h);
+    ASSERT_GT(points.size(), 40u);
+    int without_speed = 0;
+    for (const OperatingPoint& point : points) {
+        std::map<Quantity, JoinedReading> behind;
+        for (const JoinedReading& reading : readings_behind(readings, Basis::case_drain, usual, point.time))
+            behind[reading.quantity] = reading;
+        EXPECT_EQ(behind.at(Quantity::case_drain_flow).taken, point.time);
+        EXPECT_EQ(behind.at(Quantity::case_drain_flow).value, point.flow_lpm);
+        const bool has_speed = behind.contains(Quantity::shaft_speed);
+        EXPECT_EQ(has_speed, !std::isnan(point.speed_rpm));
+        without_speed += has_speed ? 0 : 1;
+        if (!has_speed) continue;
+        const JoinedReading& speed = behind.at(Quantity::shaft_speed);
+        EXPECT_EQ(speed.value, point.speed_rpm);
+        EXPECT_LE(point.time - speed.taken, speed.hold);
+        EXPECT_FALSE(behind.contains(Quantity::stroke));
+    }
+    EXPECT_GT(without_speed, 0);
+}
+
+TEST(ReadingsBehind, AreNoneOfTheFlowWhereItWasNotReadAtThatTime) {
+    SectionReadings readings;
+    put(readings, Quantity::case_drain_flow, 10s, 3.0);
+    put(readings, Quantity::outlet_pressure, 12s, 100.0);
+    const auto behind = readings_behind(readings, Basis::case_drain, hold_all(60s), midnight + 15s);
+    ASSERT_EQ(behind.size(), 1u);
+    EXPECT_EQ(behind[0].quantity, Quantity::outlet_pressure);
+    EXPECT_EQ(behind[0].hold, Milliseconds(60s));
 }
 
 }  // namespace

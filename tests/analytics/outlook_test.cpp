@@ -43,29 +43,39 @@ TEST(Outlook, TakesTheLimitThatComesFirst) {
 
 // reference: hours_to - hand-worked: mid and high only with a drift, and nothing left where the limit is behind
 TEST(Outlook, FillsItsMiddleOnlyOnceADriftIsEstablished) {
-    const WearFilter filter = worn_filter();
+    WearLaws laws;
+    laws.begin({.ln = 0.3, .sd = 0.02}, Basis::case_drain);
+    for (int day = 1; day <= 60; ++day) laws.take(0.3 + 0.004 * day, 1.0, 1.0, Basis::case_drain);
     const RatioLimit limit{.ratio = 3.0, .rule = "leakage-ratio"};
-    const HoursInHand before = hours_to(filter, limit, false);
+    const HoursInHand before = hours_to(laws, {}, limit, false);
     EXPECT_GT(before.low, 0.0);
     EXPECT_TRUE(std::isnan(before.mid));
-    const HoursInHand after = hours_to(filter, limit, true);
+    const HoursInHand after = hours_to(laws, {}, limit, true);
     EXPECT_DOUBLE_EQ(after.low, before.low);
     EXPECT_GT(after.mid, after.low);
     EXPECT_EQ(after.limit, "leakage-ratio");
-    const HoursInHand behind = hours_to(filter, {.ratio = 1.05, .rule = "leakage-ratio"}, false);
+    const HoursInHand behind = hours_to(laws, {}, {.ratio = 1.05, .rule = "leakage-ratio"}, false);
     EXPECT_DOUBLE_EQ(behind.mid, 0.0);
-    EXPECT_TRUE(hours_to(filter, {}, true).limit.empty());
+    EXPECT_TRUE(hours_to(laws, {}, {}, true).limit.empty());
+    EXPECT_TRUE(hours_to({}, {}, limit, true).limit.empty());
 }
 
-// reference: growth_per_1000_h - hand-worked: exp(x) v 1000 / 24 of the filter's own state
+// reference: growth_per_1000_h - hand-worked: 1.2 * 0.001 * 1000 / 24 = 0.05; low and high 1.2816 of 0.0005 off
 TEST(Outlook, SaysHowFastTheRatioGrows) {
-    const WearFilter filter = worn_filter();
-    const Ranged growth = growth_per_1000_h(filter);
-    const WearBelief& belief = filter.belief();
-    EXPECT_NEAR(growth.value, std::exp(belief.mean(ln_wear)) * belief.mean(drift) * 1000.0 / 24.0, 1e-12);
-    EXPECT_LT(growth.low, growth.value);
-    EXPECT_GT(growth.high, growth.value);
-    EXPECT_TRUE(std::isnan(growth_per_1000_h(WearFilter{}).value));
+    const Ranged growth = growth_per_1000_h(1.2, {.mean = 0.001, .sd = 0.0005});
+    EXPECT_NEAR(growth.value, 0.05, 1e-12);
+    EXPECT_NEAR(growth.low, 0.05 * (1.0 - 0.5 * 1.28155), 1e-6);
+    EXPECT_NEAR(growth.high, 0.05 * (1.0 + 0.5 * 1.28155), 1e-6);
+    EXPECT_TRUE(std::isnan(growth_per_1000_h(1.2, {}).value));
+}
+
+// reference: instant_ahead - hand-worked: 160 h at 16 h a day are ten days
+TEST(Outlook, TurnsHoursIntoADate) {
+    const Instant today = testing::simulation_start;
+    EXPECT_EQ(instant_ahead(today, 160.0, 16.0), today + std::chrono::hours(240));
+    EXPECT_FALSE(instant_ahead(today, 160.0, 0.0));
+    EXPECT_FALSE(instant_ahead(today, unknown, 16.0));
+    EXPECT_FALSE(instant_ahead(today, 1.0e6, 1.0));
 }
 
 }  // namespace

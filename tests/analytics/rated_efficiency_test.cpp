@@ -56,5 +56,13 @@ TEST(RatedEfficiency, IsNotANumberBeforeAnythingWasFed) {
     EXPECT_TRUE(std::isnan(rated_efficiency(filter, spec, Basis::case_drain).now.value));
 }
 
+// reference: points_lost - hand-worked: 3 % of theoretical flow leak when healthy, at ratio 2 as much again
+TEST(PointsLost, FollowTheRatioAndItsRange) {
+    const Ranged lost = points_lost(0.97, {.value = 2.0, .low = 1.8, .high = 2.2});
+    EXPECT_NEAR(lost.value, 3.0, 1e-12);
+    EXPECT_NEAR(lost.low, 2.4, 1e-12);
+    EXPECT_NEAR(lost.high, 3.6, 1e-12);
+}
+
 }  // namespace
 }  // namespace slipledger::analytics

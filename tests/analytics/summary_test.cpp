@@ -220,6 +220,17 @@ bool same_bits(const Summary& one, const Summary& other) {
                                    s.drain_share,
                                    s.highest_temperature_c,
                                    s.mean_pressure_bar,
+                                   s.mean_flow_lpm,
+                                   s.mean_speed_rpm,
+                                   s.mean_temperature_c,
+                                   s.flow_lpm.low,
+                                   s.flow_lpm.high,
+                                   s.pressure_bar.low,
+                                   s.pressure_bar.high,
+                                   s.speed_rpm.low,
+                                   s.speed_rpm.high,
+                                   s.temperature_c.low,
+                                   s.temperature_c.high,
                                    static_cast<double>(s.stop_count),
                                    static_cast<double>(s.start.time_since_epoch().count())};
         values.insert(values.end(), s.counts.begin(), s.counts.end());

@@ -16,6 +16,13 @@ TEST(Verdict, QuotesAnEightyPercentRange) {
     EXPECT_NEAR(range.high, 1.1367, 5e-5);
 }
 
+// reference: ratio_low_wanted - hand-worked: half way from 1 to 2 is 1.5
+// reference: points_low_wanted - hand-worked: half of 7 is 3.5
+TEST(LowEnd, MustReachHalfWayFromHealthyToTheLimit) {
+    EXPECT_DOUBLE_EQ(ratio_low_wanted(2.0), 1.5);
+    EXPECT_DOUBLE_EQ(points_low_wanted(7.0), 3.5);
+}
+
 // reference: judge_ratio - hand-worked: limit 2 wants a low end above 1.5, limit 1.17 above 1.085, limit 3 above 2
 TEST(Verdict, PassesALimitOnlyWithItsLowEndPastHalfTheWay) {
     EXPECT_EQ(judge_ratio({2.1, 1.6, 2.7}, ratio_limits).beyond, Level::plan);
@@ -66,19 +73,6 @@ TEST(Verdict, SaysWhyThereIsNoLevel) {
     k.temperature = false;
     EXPECT_EQ(unjudged_reason(k), UnjudgedReason::no_temperature);
     EXPECT_EQ(name_of(UnjudgedReason::seldom_judged), "seldom-judged");
-}
-
-// reference: simplest_cause - hand-worked: one sign at a time
-TEST(Verdict, NamesTheSimplestCauseThatFits) {
-    EXPECT_EQ(simplest_cause({.level = Level::sound}).kind, CauseKind::none);
-    EXPECT_EQ(simplest_cause({.level = Level::plan, .scales_with_leakage = true}).kind, CauseKind::wear);
-    EXPECT_EQ(simplest_cause({.level = Level::plan}).kind, CauseKind::wear_or_instrument);
-    EXPECT_EQ(simplest_cause({.level = Level::watch, .step = true}).kind, CauseKind::sudden_damage);
-    EXPECT_EQ(simplest_cause({.level = Level::sound, .step = true, .explained = true}).kind,
-              CauseKind::oil_or_operation);
-    EXPECT_EQ(simplest_cause({.level = Level::act, .step = true, .instrument_suspect = true}).kind,
-              CauseKind::instrument);
-    EXPECT_EQ(name_of(CauseKind::wear_or_instrument), "wear-or-instrument");
 }
 
 }  // namespace

@@ -203,5 +203,60 @@ TEST(WearFilter, KnowsHowFarOutsideItsExperienceAPointLies) {
     EXPECT_NEAR(filter.distance_from_seen(far) - once, std::log(2.0), 0.02);
 }
 
+TestedLeakage bucket(const SimulatedSection& section, double flow_lpm) {
+    return *tested_leakage({.flow_lpm = flow_lpm, .at = section.spec().reference}, section.spec());
+}
+
+// reference: WearFilter::heed_test - hand-worked: about 2.6 L/min is expected; 4.1 % of it away is within 3 standard
+// deviations of (3 % of the test, 1 % of gain, 3 % of the model), 1.5 times it is not
+TEST(WearFilter, IsAnchoredByATestThatAgreesAndFollowsOneThatDoesNot) {
+    const SimulatedSection section{.seed = 21, .days = 60};
+    WearFilter agreeing = fed(section);
+    const double expected = std::exp(agreeing.worn_leakage(section.spec().reference).ln);
+    const LogEstimate before = agreeing.wear();
+    EXPECT_FALSE(agreeing.heed_test(bucket(section, 1.041 * expected)));
+    EXPECT_GT(agreeing.wear().ln, before.ln);
+    EXPECT_LT(agreeing.wear().ln, before.ln + 0.041);
+    EXPECT_LT(agreeing.wear().sd, before.sd);
+
+    WearFilter contradicted = fed(section);
+    const LeakageCoefficients coefficients = contradicted.coefficients();
+    const double disturbed = std::exp(contradicted.belief().mean(disturbance));
+    EXPECT_TRUE(contradicted.heed_test(bucket(section, 1.5 * expected)));
+    EXPECT_NEAR(contradicted.wear().ln, before.ln + std::log(1.5 / disturbed), 0.001);
+    EXPECT_EQ(contradicted.coefficients().laminar_lpm, coefficients.laminar_lpm) << "the readings after it move these";
+    EXPECT_GT(contradicted.belief().covariance(ln_laminar, ln_laminar), 0.12);
+    EXPECT_LT(contradicted.wear().sd, 0.1);
+    EXPECT_FALSE(WearFilter().heed_test(bucket(section, 3.0)));
+}
+
+// reference: WearFilter::heed_as_new - hand-worked: a sighting of 0 with variance 0.0025 beside x with variance P leaves
+// x 0.0025 / (0.0025 + P)
+TEST(WearFilter, TakesAPartThatIsToldToBeAsNewAtItsWord) {
+    SimulatedSection section{.seed = 22, .days = 60};
+    section.ratio = [](double h) { return h < 400.0 ? 1.0 : 1.2; };
+    WearFilter filter = fed(section);
+    const LogEstimate before = filter.wear();
+    filter.heed_as_new();
+    EXPECT_NEAR(filter.wear().ln, before.ln * 0.0025 / (0.0025 + before.sd * before.sd), 1e-9);
+    EXPECT_LT(filter.wear().sd, 0.05);
+}
+
+// reference: WearFilter::open_for - hand-worked: 0.35^2 = 0.1225 more in the level, nothing in the wear; nothing before a feed
+TEST(WearFilter, OpensToWhatAChangeMayHaveBrought) {
+    const SimulatedSection section{.seed = 23, .days = 60};
+    WearFilter filter = fed(section);
+    const WearBelief before = filter.belief();
+    FactChange meter;
+    meter.instruments = static_cast<std::uint16_t>(1U << index_of(Quantity::case_drain_flow));
+    filter.open_for(meter);
+    EXPECT_NEAR(filter.belief().covariance(ln_laminar, ln_laminar), before.covariance(ln_laminar, ln_laminar) + 0.1225, 1e-12);
+    EXPECT_EQ(filter.wear().ln, before.mean(ln_wear));
+    EXPECT_EQ(filter.wear().sd, std::sqrt(before.covariance(ln_wear, ln_wear)));
+    WearFilter nothing;
+    nothing.open_for(meter);
+    EXPECT_FALSE(nothing.primed());
+}
+
 }  // namespace
 }  // namespace slipledger::analytics

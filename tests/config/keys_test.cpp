@@ -62,6 +62,7 @@ nlohmann::json plant_for_defaults() {
     auto plant = nlohmann::json::parse(sound_plant());
     plant["economics"] = {{"energy_price_per_kwh", 0.2}, {"currency", "EUR"}};
     plant["pumps"][0]["spare"] = {{"part_number", "RG-71"}};
+    plant["pumps"][0]["replacement"] = nlohmann::json::object();
     plant["pumps"][0]["sensors"]["delivery_flow"] = nlohmann::json::object();
     return plant;
 }
@@ -79,6 +80,7 @@ std::string place_of(const Key& key) {
         {"limits", "/pumps/0/limits"},
         {"sensor", "/pumps/0/sensors/delivery_flow"},
         {"spare", "/pumps/0/spare"},
+        {"replacement", "/pumps/0/replacement"},
         {"feed", key.name == "reply" || key.name == "idle_timeout" ? "/feeds/0" : "/feeds/1"},
         {"target", "/feeds/1/columns/P"},
         {"webhook", "/alerts/webhooks/0"},

@@ -313,6 +313,8 @@ constexpr Spoiled spoiled[] = {
      "bad-address"},
     {"MoneyWithoutCurrency", R"([{"op":"add","path":"/economics","value":{"energy_price_per_kwh":0.21}}])",
      "/economics/currency", "missing"},
+    {"FixedPumpThatMakesUpByStroke", R"([{"op":"add","path":"/pumps/1/makes_up_by","value":"stroke"}])",
+     "/pumps/1/makes_up_by", "implausible"},
     {"NothingWhereTextIsWanted", R"([{"op":"add","path":"/alerts/log","value":""}])", "/alerts/log", "empty"},
     {"NullIsNoValue", R"([{"op":"add","path":"/pumps/0/relief_bar","value":null}])", "/pumps/0/relief_bar",
      "wrong-type"},

@@ -50,8 +50,8 @@ protected:
     Marks marks_of(const SectionTold& told) const { return mark(story_, truth_, {}, told); }
 
     plantsim::Mill mill_{plant_of(straight), 1};
-    Truth truth_{mill_, 0, 0};
     SectionStory story_{.shape = WearShape::linear};
+    Truth truth_{mill_, story_};
 };
 
 TEST_F(Marked, TruthPassesTheRatiosOfAStraightLineWhereItShould) {
@@ -142,7 +142,7 @@ class Broken : public ::testing::Test {
 protected:
     static constexpr Millis at = 1704067200000 + 100 * day_ms + 10 * plantsim::hour_ms;
     plantsim::Mill mill_{plant_of({.step_at = at, .step_ratio = 1.8}), 1};
-    Truth truth_{mill_, 0, 0};
+    Truth truth_{mill_, {.steps = true}};
 };
 
 TEST_F(Broken, StepIsToldWithinADaysRunningAndCalledByItsName) {

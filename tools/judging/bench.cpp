@@ -114,7 +114,7 @@ StoryOutcome run_story(const Story& story, Spoil spoil, const std::filesystem::p
     outcome.pump_years = static_cast<double>(story.plant.pumps.size()) * span / (365.25 * plantsim::day_ms);
     for (std::size_t i = 0; i < story.sections.size(); ++i) {
         const SectionStory& section = story.sections[i];
-        const Truth truth(mill, section.pump, section.section);
+        const Truth truth(mill, section);
         const config::Section& papers = section_of(result.plant, story, section);
         const ActLimits limits = act_limits_of(papers);
         const double share_limit = papers.limits.drain_share_percent.watch.value_or(8.0);

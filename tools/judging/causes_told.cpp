@@ -13,10 +13,11 @@ struct RightCause {
     std::array<std::string_view, 4> told;
 };
 
-constexpr std::array<RightCause, 18> right_causes_table{{
+constexpr std::array<RightCause, 22> right_causes_table{{
     {"nothing", {"nothing"}},
     {"wear", {"wear"}},
     {"sudden damage", {"sudden-damage"}},
+    {"internal return", {"internal-return", "bypass"}},
     {"hot oil", {"nothing", "thin-oil", "oil-or-operation"}},
     {"other oil", {"nothing", "thin-oil", "oil-or-operation"}},
     {"ageing oil", {"nothing", "thin-oil", "oil-or-operation"}},
@@ -25,6 +26,9 @@ constexpr std::array<RightCause, 18> right_causes_table{{
     {"starved inlet", {"inlet-starvation"}},
     {"blocked drain", {"blocked-drain"}},
     {"air in oil", {"air-in-oil"}},
+    {"vanes", {"vanes"}},
+    {"bypass", {"bypass", "internal-return"}},
+    {"silent sensor", {"feed-silent", "nothing"}},
     {"stuck sensor", {"sensor-stuck", "instrument", "wear-or-instrument"}},
     {"drifting sensor", {"sensor-drifting", "instrument", "wear-or-instrument", "nothing"}},
     {"out of range", {"sensor-off-scale", "feed-silent", "instrument"}},

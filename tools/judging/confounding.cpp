@@ -156,6 +156,8 @@ void spoil_instrument(const Place& at, Confounder confounder) {
     const double lasts = at.dice.between(8.0, 60.0);
     if (confounder == Confounder::stuck_sensor)
         return at.at_instrument(column, {.kind = TroubleKind::stuck}, lasts, 0.0);
+    if (confounder == Confounder::silent_sensor)
+        return at.at_instrument(column, {.kind = TroubleKind::silent}, lasts, 0.0);
     if (confounder == Confounder::drifting_sensor)
         return at.at_instrument(column, drift_of(column, at.dice), to_the_end, at.dice.between(50.0, 150.0));
     if (confounder == Confounder::out_of_range)
@@ -174,6 +176,10 @@ Wanted wanted_for(Confounder confounder, Dice& dice) {
             return {.drain = true, .delivery = false, .compensated = true};
         case Confounder::blocked_drain:
             return {.drain = true};
+        case Confounder::vanes:
+            return {.kind = PumpKind::vane, .delivery = true, .compensated = false};
+        case Confounder::bypass:
+            return {.drain = true, .delivery = true, .compensated = false};
         case Confounder::starved_inlet:
         case Confounder::air_in_oil:
             return {.drain = dice.happens(0.4), .delivery = true, .compensated = false};
@@ -189,6 +195,8 @@ bool can_be_felt(Confounder confounder, const PumpDrawing& pump) {
             return pump.compensator.has_value();
         case Confounder::blocked_drain:
             return meters(pump).drain;
+        case Confounder::bypass:
+            return meters(pump).drain && meters(pump).delivery;
         case Confounder::starved_inlet:
         case Confounder::air_in_oil:
             return meters(pump).delivery;
@@ -229,6 +237,12 @@ void confound(PlantDrawing& plant, std::size_t pump, Confounder confounder, Mill
         case Confounder::air_in_oil:
             return at.at_tank(TroubleKind::air_in_oil, dice.between(0.015, 0.06), dice.between(15.0, 90.0),
                               dice.between(0.0, 10.0));
+        case Confounder::vanes:
+            return at.at_pump(TroubleKind::vanes_stick, dice.between(0.03, 0.15), dice.between(30.0, 150.0),
+                              dice.between(0.0, 20.0));
+        case Confounder::bypass:
+            return at.at_pump(TroubleKind::valve_passes, dice.between(0.01, 0.05), to_the_end,
+                              dice.happens(0.5) ? 0.0 : dice.between(20.0, 90.0));
         case Confounder::clock_off:
             return confuse_clock(at);
         case Confounder::zero_drift:
@@ -236,6 +250,7 @@ void confound(PlantDrawing& plant, std::size_t pump, Confounder confounder, Mill
         case Confounder::pilot_flow:
             return at.at_pump(TroubleKind::pilot_flow, healthy_drain_lpm(plant, at.pump) * dice.between(0.08, 0.3),
                               to_the_end, dice.happens(0.5) ? 0.0 : dice.between(20.0, 90.0));
+        case Confounder::silent_sensor:
         case Confounder::stuck_sensor:
         case Confounder::drifting_sensor:
         case Confounder::out_of_range:

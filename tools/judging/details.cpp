@@ -9,6 +9,8 @@
 namespace slipledger::judging {
 namespace {
 
+using plantsim::day_ms;
+
 std::string cell(double value) {
     return std::isnan(value) ? std::string() : fmt::format("{:.4g}", value);
 }
@@ -50,9 +52,8 @@ std::string life_of(const std::optional<LifeMark>& life) {
     return life ? fmt::format("{},{}", life->holds ? "yes" : "no", cell(life->width)) : ",";
 }
 
-std::string day_of(const DayTold& day, const Truth& truth, const ActLimits& limits) {
-    const std::time_t seconds = day.end / plantsim::second_ms;
-    return fmt::format("{},{},{:.1f},{},{},{},{},{},{},{},{},{},{}\n", plantsim::rfc3339(seconds * plantsim::second_ms),
+std::string day_of(const DayTold& day, const Truth& truth, const ActLimits& limits, double noon_c) {
+    return fmt::format("{},{},{:.1f},{},{},{},{},{},{},{},{},{},{},{:.1f}\n", plantsim::rfc3339(day.end),
                        day.seen == Seen::drain ? "drain" : "delivery", truth.running_h(day.end),
                        !day.judged    ? "unjudged"
                        : day.alerting ? "alert"
@@ -60,7 +61,7 @@ std::string day_of(const DayTold& day, const Truth& truth, const ActLimits& limi
                        cell(day.ratio), cell(truth.ratio(day.seen, day.end)), cell(100.0 * day.efficiency),
                        cell(100.0 * truth.efficiency(day.seen, day.at_rated, day.end)), cell(day.life_low_h),
                        cell(day.life_mid_h), cell(day.life_high_h),
-                       cell(truth.life_h(day.seen, day.at_rated, limits, day.end)), day.cause);
+                       cell(truth.life_h(day.seen, day.at_rated, limits, day.end)), day.cause, noon_c);
 }
 
 }  // namespace
@@ -90,15 +91,17 @@ std::string trace_csv(const Story& story, Spoil spoil, const std::filesystem::pa
     const PipelineResult result = run_pipeline(story, mill, spoil, folder, [](std::span<const plantsim::Row>) {});
     std::string text =
         "pump,section,day_ends,basis,running_h,level,ratio,true_ratio,efficiency,true_efficiency,life_low,life_mid,"
-        "life_high,true_life,cause\n";
+        "life_high,true_life,cause,tank_c\n";
     for (std::size_t i = 0; i < story.sections.size(); ++i) {
         const SectionStory& section = story.sections[i];
         const plantsim::PumpDrawing& pump = story.plant.pumps[section.pump];
-        const Truth truth(mill, section.pump, section.section);
+        const Truth truth(mill, section);
         const std::string& part = pump.sections[section.section].id;
         const ActLimits limits = act_limits_of(*result.plant.find_pump(pump.id)->find_section(part));
         for (const std::vector<DayTold>* days : {&result.told[i].days, &result.told[i].other_days})
-            for (const DayTold& day : *days) text += fmt::format("{},{},{}", pump.id, part, day_of(day, truth, limits));
+            for (const DayTold& day : *days)
+                text += fmt::format("{},{},{}", pump.id, part,
+                                    day_of(day, truth, limits, mill.tank_c(pump.reservoir, day.end - day_ms / 2)));
     }
     return text;
 }

@@ -102,6 +102,8 @@ void add_lives(const All& all, std::vector<Figure>& figures) {
                                 ask([](const Lives& all_lives) { return all_lives.score_first; })));
     figures.push_back(by_teller({.name = "life-score-half", .what = "median interval score over life, half"},
                                 ask([](const Lives& all_lives) { return all_lives.score_half; })));
+    figures.push_back(by_teller({.name = "life-before-wear", .what = "first range given before anything wore, %"},
+                                ask([](const Lives& all_lives) { return all_lives.before_wear.percent(); })));
     figures.push_back(by_teller({.name = "life-none", .what = "worn, no range ever given, %"},
                                 ask([](const Lives& all_lives) { return all_lives.none_given.percent(); })));
 }
@@ -109,7 +111,12 @@ void add_lives(const All& all, std::vector<Figure>& figures) {
 void add_causes(const All& all, std::vector<Figure>& figures) {
     figures.push_back({.name = "first-cause",
                        .what = "first cause right, of what was told, %",
-                       .value = right_causes(confusion(all), true).percent(),
+                       .value = right_causes_of_what_was_told(confusion(all)).percent(),
+                       .better = Better::higher,
+                       .aim = 90.0});
+    figures.push_back({.name = "cause-confounded",
+                       .what = "the same of confounders, silence counted, %",
+                       .value = right_causes_of_confounders(confusion(all)).percent(),
                        .better = Better::higher,
                        .aim = 90.0});
     figures.push_back({.name = "instrument-as-wear",
@@ -120,6 +127,10 @@ void add_causes(const All& all, std::vector<Figure>& figures) {
                        .what = "taken over, called sound without saying since when, %",
                        .value = hidden_comparisons(all).percent(),
                        .aim = 0.0});
+    figures.push_back({.name = "taken-over-told",
+                       .what = "taken over worn, told above sound at the end, %",
+                       .value = taken_over_told(all).percent(),
+                       .better = Better::higher});
 }
 
 }  // namespace
@@ -140,7 +151,8 @@ bool is_healthy_fleet(const SectionOutcome& section) {
 }
 
 bool is_confounded_alone(const SectionOutcome& section) {
-    return section.story.confounders.size() == 1 && !section.story.wears();
+    return section.story.confounders.size() == 1 && !section.story.wears() &&
+           section.story.confounders.front() != Confounder::bypass;
 }
 
 bool is_hard_alone(const SectionOutcome& section) {
@@ -148,7 +160,7 @@ bool is_hard_alone(const SectionOutcome& section) {
 }
 
 bool is_worn_plainly(const SectionOutcome& section) {
-    return is_honest(section) && section.story.wears() && !section.story.steps;
+    return is_honest(section) && section.story.wears() && !section.story.steps && !section.story.inside;
 }
 
 std::vector<Figure> figures_of(const std::vector<SectionOutcome>& all) {

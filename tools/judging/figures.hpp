@@ -30,7 +30,7 @@ std::vector<Figure> figures_of(const std::vector<SectionOutcome>& all);
 
 // Which sections a figure is about.
 bool is_healthy_fleet(const SectionOutcome& section);
-bool is_confounded_alone(const SectionOutcome& section);  // one confounder, no wear
+bool is_confounded_alone(const SectionOutcome& section);  // one confounder that can be told from wear, no wear
 bool is_hard_alone(const SectionOutcome& section);        // several, no wear
 bool is_worn_plainly(const SectionOutcome& section);      // wear without confounders, watched from healthy on
 bool is_honest(const SectionOutcome& section);            // no confounder, not taken over

@@ -34,14 +34,16 @@ BenchOrder short_order() {
 }
 
 BenchOrder full_order() {
-    return {.fleets = {{Fleet::healthy, 150},
-                       {Fleet::wear, 190},
-                       {Fleet::step, 40},
-                       {Fleet::confounded, 120},
-                       {Fleet::mixed, 80},
-                       {Fleet::hard, 40},
-                       {Fleet::double_pumps, 20},
-                       {Fleet::taken_over, 20}},
+    return {.fleets = {{Fleet::healthy, 180},
+                       {Fleet::wear, 240},
+                       {Fleet::step, 50},
+                       {Fleet::confounded, 270},
+                       {Fleet::mixed, 100},
+                       {Fleet::hard, 60},
+                       {Fleet::double_pumps, 24},
+                       {Fleet::taken_over, 30},
+                       {Fleet::second_life, 30},
+                       {Fleet::internal_return, 12}},
             .telling = {.seed = 4, .fast_loggers = true}};
 }
 

@@ -10,6 +10,7 @@ namespace {
 using plantsim::day_ms;
 
 constexpr double wears_from = 1.1;  // true ratio below which an alert is wrong
+constexpr double wear_begun_from = 1.02;
 constexpr double told_by = 2.0;
 constexpr double delay_from = 1.25;
 constexpr double life_wanted_from = 1.5;  // true ratio by which a range should have been given
@@ -51,6 +52,7 @@ public:
         if (story_.wears() && !story_.steps && !story_.taken_over) mark_life();
         mark_cause();
         if (story_.taken_over) mark_comparison();
+        marks_.told_at_end = !told_.days.empty() && told_.days.back().alerting;
         return std::move(marks_);
     }
 
@@ -137,6 +139,7 @@ private:
         const double life = truth_.life_h(first->seen, first->at_rated, limits_, first->end);
         if (!std::isfinite(life) || life <= 0.0) return;
         marks_.first_life = life_mark(*first);
+        marks_.life_before_wear = truth_.ratio(truth_.seen(), first->end) < wear_begun_from;
         const auto half = truth_.hours_pass(truth_.running_h(first->end) + 0.5 * life);
         if (!half) return;
         const auto later = given(*half);
@@ -146,6 +149,7 @@ private:
 
     std::string true_cause() const {
         if (story_.steps) return "sudden damage";
+        if (story_.inside) return "internal return";
         if (story_.wears()) return "wear";
         if (!story_.confounders.empty()) return std::string(name_of(story_.confounders.front()));
         return "nothing";
@@ -186,10 +190,21 @@ private:
     Marks marks_;
 };
 
+// What is told of a part's predecessor is not told of it.
+SectionTold told_since(SectionTold told, Millis fitted) {
+    std::erase_if(told.days, [&](const DayTold& day) { return day.end <= fitted; });
+    std::erase_if(told.other_days, [&](const DayTold& day) { return day.end <= fitted; });
+    std::erase_if(told.alerts, [&](const AlertTold& alert) { return alert.raised <= fitted; });
+    std::erase_if(told.steps, [&](Millis step) { return step <= fitted; });
+    return told;
+}
+
 }  // namespace
 
 Marks mark(const SectionStory& story, const Truth& truth, const ActLimits& limits, const SectionTold& told) {
-    return Marking(story, truth, limits, told).run();
+    if (!story.fitted_at) return Marking(story, truth, limits, told).run();
+    const SectionTold of_its_life = told_since(told, *story.fitted_at);
+    return Marking(story, truth, limits, of_its_life).run();
 }
 
 }  // namespace slipledger::judging

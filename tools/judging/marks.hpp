@@ -43,12 +43,14 @@ struct Marks {
 
     bool life_wanted = false;  // it wore, and far enough that a range should have been given
     std::optional<LifeMark> first_life{};
+    bool life_before_wear = false;  // the first range was given while nothing wore yet
     std::optional<LifeMark> half_life{};
 
     std::string true_cause{};
     std::string told_cause{};   // "nothing" where nothing was told
     bool cause_counts = false;  // it has one true cause
     bool instrument_as_wear = false;
+    bool told_at_end = false;                     // above sound
     bool hides_what_it_is_compared_with = false;  // a taken-over pump called sound
 };
 

@@ -79,6 +79,7 @@ Json maker_test_of(const PumpPapers& papers, const SectionDrawing& section, cons
 Json section_of(const PumpPapers& papers, const SectionDrawing& section, const plantsim::PlantDrawing& plant) {
     Json written{{"displacement_cm3", section.lives.front().displacement_cm3}, {"model", papers.pump.model}};
     if (papers.maker_test) written["maker_test"] = maker_test_of(papers, section, plant);
+    if (papers.pump.drawing.one_drain_meter) written["drain_group"] = "case-" + papers.pump.drawing.id;
     return written;
 }
 

@@ -20,11 +20,10 @@ struct OilPapers {
 // Threads: a value, share freely.
 struct PumpPapers {
     YardPump pump{};
-    bool since_new = true;     // it was new when watching began, and the file says so
     bool ranges_given = true;  // of the instruments
     bool maker_test = false;
-    double maker_test_error = 0.0;  // share by which its record is off
-    std::optional<plantsim::Millis> since{};
+    double maker_test_error = 0.0;            // share by which its record is off
+    std::optional<plantsim::Millis> since{};  // it was new then
 };
 
 // Threads: a value, share freely.

@@ -123,6 +123,20 @@ std::uint64_t load(const Story& story, const plantsim::Mill& mill, const config:
     return loading.rows();
 }
 
+void enter(const Story& story, ledger::Writer& writer) {
+    for (const Entry& entry : story.entries) {
+        ledger::Event event;
+        event.pump = story.plant.pumps[entry.pump].id;
+        event.section = entry.section;
+        event.kind = entry.kind;
+        event.at = instant(entry.at);
+        event.entered = event.at;
+        event.by = "bench";
+        event.body = entry.body;
+        writer.store(event);
+    }
+}
+
 void judge(const config::Plant& plant, ledger::Writer& writer, const ledger::Reader& reader) {
     for (std::vector<ledger::Mark> marks = reader.marks(); !marks.empty(); marks = reader.marks())
         for (const ledger::Mark& mark : marks) writer.store(watch::judge_pump(reader, plant, writer.directory(), mark));
@@ -239,6 +253,7 @@ PipelineResult run_pipeline(const Story& story, const plantsim::Mill& mill, Spoi
         result.plant = read(spoilt(story.plant_file_after, spoil), folder);
         watch::store_plant_changes(result.plant, writer, clock);
     }
+    enter(story, writer);
     result.rows = load(story, mill, result.plant, writer, see);
     const ledger::Reader reader(result.plant.store.path);
     judge(result.plant, writer, reader);

@@ -30,6 +30,14 @@ constexpr double drawn_vane_cm3 = 67.0;
 constexpr double drawn_external_cm3 = 63.0;
 constexpr double drawn_internal_cm3 = 80.0;
 
+bool is_gear(PumpKind kind) {
+    return kind == PumpKind::external_gear || kind == PumpKind::internal_gear;
+}
+
+bool is_piston(PumpKind kind) {
+    return kind == PumpKind::axial_piston || kind == PumpKind::radial_piston;
+}
+
 double displacement_of(PumpKind kind, double size) {
     switch (kind) {
         case PumpKind::axial_piston:
@@ -86,14 +94,26 @@ std::vector<Gap> as_built(std::vector<Gap> gaps, Dice& dice) {
     return gaps;
 }
 
+// Across the lands of the port plate or pintle, back to the inlet: no drain meter sees it.
+Gap across_the_lands(double size) {
+    return {.name = "across the lands",
+            .conductance_m3 = size * plantsim::slot_conductance(2, 0.03, 0.008, 14e-6),
+            .area_m2 = size * 2 * 0.03 * 14e-6,
+            .opens_with_pressure = 0.1,
+            .to_drain = false};
+}
+
 Life life_of(PumpKind kind, double size, Dice& dice) {
+    std::vector<Gap> gaps = drawn_gaps(kind, size);
+    if (is_piston(kind)) gaps.push_back(across_the_lands(size));
     return {.displacement_cm3 = std::round(displacement_of(kind, size)),
             .true_share = std::clamp(dice.normal(1.0, 0.01), 0.975, 1.025),
             .dead_share = dice.between(0.2, 0.4),
-            .gaps = as_built(drawn_gaps(kind, size), dice)};
+            .gaps = as_built(std::move(gaps), dice)};
 }
 
 PumpKind kind_for(const Wanted& wanted, Dice& dice) {
+    if (wanted.kind) return *wanted.kind;
     if (wanted.sections > 1) return PumpKind::vane;
     if (wanted.compensated.value_or(false))
         return dice.one_of(
@@ -105,14 +125,6 @@ PumpKind kind_for(const Wanted& wanted, Dice& dice) {
     if (draw < 0.50) return PumpKind::radial_piston;
     if (draw < 0.74) return PumpKind::vane;
     return draw < 0.88 ? PumpKind::external_gear : PumpKind::internal_gear;
-}
-
-bool is_gear(PumpKind kind) {
-    return kind == PumpKind::external_gear || kind == PumpKind::internal_gear;
-}
-
-bool is_piston(PumpKind kind) {
-    return kind == PumpKind::axial_piston || kind == PumpKind::radial_piston;
 }
 
 double size_of(PumpKind kind, Dice& dice) {

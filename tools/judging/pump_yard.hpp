@@ -23,6 +23,7 @@ struct YardPump {
 
 // What such a pump should be, where it is not left to chance. Threads: a value, share freely.
 struct Wanted {
+    std::optional<PumpKind> kind{};
     std::optional<bool> drain{};        // metered in the drain; in a gear pump it cannot be
     std::optional<bool> delivery{};     // metered at the outlet
     std::optional<bool> compensated{};  // by pressure

@@ -60,7 +60,14 @@ public:
             case Fleet::taken_over:
                 taken_over();
                 break;
+            case Fleet::second_life:
+                second_life();
+                break;
+            case Fleet::internal_return:
+                internal_return();
+                break;
         }
+        bed_in();
         write_papers();
         return std::move(story_);
     }
@@ -116,7 +123,7 @@ private:
     }
 
     Wear& wear_of(const SectionStory& section) {
-        return plant().pumps[section.pump].sections[section.section].lives.front().wear;
+        return plant().pumps[section.pump].sections[section.section].lives.back().wear;
     }
 
     void let_wear(SectionStory& section) {
@@ -248,6 +255,8 @@ private:
 
     void double_pump() {
         build({.sections = 2}, 1);
+        plantsim::PumpDrawing& pump = plant().pumps.front();
+        pump.one_drain_meter = pump.sections.front().fitted.drain && dice_.happens(0.3);
         let_wear(story_.sections[dice_.below(2)]);
     }
 
@@ -263,6 +272,52 @@ private:
         wear.begins = 0.0;
         papers_.front().since.reset();
         if (papers_.size() > 1) papers_[1].since = plant().year_begins;
+    }
+
+    // The first part was worn out sooner, and what came out was told; the second is another piece of the same model.
+    void second_life() {
+        build({}, 1);
+        SectionStory& section = story_.sections.front();
+        plantsim::PumpDrawing& pump = plant().pumps.front();
+        plantsim::SectionDrawing& part = pump.sections.front();
+        const double share = dice_.between(0.25, 0.4);
+        const Millis fitted = at_share(share) + 12 * plantsim::hour_ms;
+        const double last_ratio = dice_.between(2.0, 3.2);
+        plantsim::Life second = sister_of(papers_.front().pump, dice_).drawing.sections.front().lives.front();
+        second.from = fitted;
+        part.lives.front().wear = {
+            .end_ratio = 1.0 + (last_ratio - 1.0) / share, .begins = 0.0, .bend = 1.0, .law = WearLaw::ratio_power};
+        part.lives.push_back(second);
+        pump.overhaul = {fitted - 4 * plantsim::hour_ms, fitted + 2 * plantsim::hour_ms};
+        section.fitted_at = fitted;
+        let_wear(section);
+        story_.entries.push_back({.pump = 0,
+                                  .section = part.id,
+                                  .at = fitted,
+                                  .kind = "replaced",
+                                  .body = fmt::format(R"({{"displacement_cm3":{},"model":"{}","found":"worn"}})",
+                                                      second.displacement_cm3, papers_.front().pump.model)});
+    }
+
+    void internal_return() {
+        build({.kind = PumpKind::axial_piston, .drain = true, .delivery = true, .compensated = false}, 1);
+        SectionStory& section = story_.sections.front();
+        section.inside = true;
+        let_wear(section);
+        plantsim::Life& life = plant().pumps.front().sections.front().lives.front();
+        life.wear.inside = true;
+        for (plantsim::Gap& gap : life.gaps) {
+            gap.wears = gap.to_drain ? 0.0 : 1.0;
+            gap.hole_wears = 0.0;
+        }
+    }
+
+    // What is new beds in; what was there before has.
+    void bed_in() {
+        for (std::size_t i = 0; i < papers_.size(); ++i)
+            for (plantsim::SectionDrawing& section : plant().pumps[i].sections)
+                for (plantsim::Life& life : section.lives)
+                    if (papers_[i].since || life.from > 0) life.run_in_share = dice_.between(0.0, 0.02);
     }
 
     void write_papers() {

@@ -11,6 +11,8 @@ namespace {
 
 using Json = nlohmann::ordered_json;
 
+constexpr std::size_t widest = 100;
+
 std::string number(double value) {
     if (std::isnan(value)) return "-";
     if (std::isinf(value)) return value > 0 ? "never" : "-never";
@@ -35,21 +37,23 @@ std::string figures_part(const std::vector<Figure>& figures) {
 
 std::string alerts_cell(const FalseAlerts& alerts) {
     if (!(alerts.years > 0.0)) return "-";
-    return fmt::format("{:>3} {:.3f} <{:.3f}", alerts.alerts, alerts.rate(), alerts.at_most());
+    return fmt::format("{:>4} {:.3f} <{:.3f}", alerts.alerts, alerts.rate(), alerts.at_most());
 }
 
 std::string alerts_row(const std::vector<SectionOutcome>& all, std::string_view name, const Chosen& chosen) {
     const FalseAlerts ours = false_alerts(all, Teller::ours, chosen);
     if (ours.sections == 0) return {};
-    return fmt::format("{:<18}{:>8}{:>8.1f}  {:>18}{:>20}{:>20}\n", name, ours.sections, ours.years, alerts_cell(ours),
+    return fmt::format("{:<18}{:>8}{:>8.1f}{:>20}{:>6}{:>20}{:>20}\n", name, ours.sections, ours.years,
+                       alerts_cell(ours), ours.sections_alerted,
                        alerts_cell(false_alerts(all, Teller::fixed_limit, chosen)),
                        alerts_cell(false_alerts(all, Teller::notebook, chosen)));
 }
 
 std::string false_alerts_part(const std::vector<SectionOutcome>& all) {
-    std::string text = "\nFalse wear alerts: count, a judged section-year, 95 % surely below (Garwood)\n";
-    text += fmt::format("{:<18}{:>8}{:>8}  {:>18}{:>20}{:>20}\n", "", "sections", "years", "slipledger", "fixed limit",
-                        "notebook");
+    std::string text =
+        "\nFalse wear alerts: count, a judged section-year, 95 % surely below (Garwood); sections alerted\n";
+    text += fmt::format("{:<18}{:>8}{:>8}{:>20}{:>6}{:>20}{:>20}\n", "", "sections", "years", "slipledger", "on",
+                        "fixed limit", "notebook");
     text += alerts_row(all, "healthy", is_healthy_fleet);
     text += alerts_row(all, "worn, below 1.1", is_worn_plainly);
     text += alerts_row(all, "one confounder", is_confounded_alone);
@@ -76,6 +80,9 @@ std::vector<Slice> worn_slices() {
     slices.push_back({"double pumps", [](const SectionOutcome& section) {
                           return section.fleet == Fleet::double_pumps && is_worn_plainly(section);
                       }});
+    slices.push_back(
+        {"second life", [](const SectionOutcome& section) { return section.story.fitted_at.has_value(); }});
+    slices.push_back({"internal return", [](const SectionOutcome& section) { return section.story.inside; }});
     slices.push_back({"worn, confounded", [](const SectionOutcome& section) {
                           return section.story.wears() && !section.story.confounders.empty();
                       }});
@@ -100,25 +107,18 @@ std::string worn_part(const std::vector<SectionOutcome>& all) {
 }
 
 std::string causes_part(const std::vector<SectionOutcome>& all) {
-    const Confusion counts = confusion(all);
-    std::vector<std::string> told;
-    for (const auto& [truth, row] : counts)
-        for (const auto& [cause, count] : row)
-            if (std::ranges::find(told, cause) == told.end()) told.push_back(cause);
-    std::ranges::sort(told);
-    std::string text = "\nCauses: true ones down, told ones across (+ right)\n";
-    text += fmt::format("{:<16}", "");
-    for (const std::string& cause : told) text += fmt::format("{:>14}", cause.substr(0, 13));
-    text += '\n';
-    for (const auto& [truth, row] : counts) {
-        text += fmt::format("{:<16}", truth);
-        for (const std::string& cause : told) {
-            const auto cell = row.find(cause);
-            const int count = cell == row.end() ? 0 : cell->second;
-            text += fmt::format("{:>13}{}", count == 0 ? "." : std::to_string(count),
-                                count > 0 && is_right_cause(truth, cause) ? '+' : ' ');
+    std::string text = "\nCauses: what was true, and what was told of it (+ right)\n";
+    for (const auto& [truth, row] : confusion(all)) {
+        std::string line = fmt::format("{:<18}", truth);
+        for (const auto& [cause, count] : row) {
+            const std::string part = fmt::format(" {:>4}{} {}", count, is_right_cause(truth, cause) ? '+' : ' ', cause);
+            if (line.size() + part.size() > widest) {
+                text += line + '\n';
+                line = std::string(18, ' ');
+            }
+            line += part;
         }
-        text += '\n';
+        text += line + '\n';
     }
     return text;
 }

@@ -95,7 +95,10 @@ Lives lives(const std::vector<SectionOutcome>& all, Teller teller, const Chosen&
     for (const SectionOutcome& section : all) {
         if (!chosen(section)) continue;
         const Marks& marks = section.of(teller);
-        if (marks.first_life) first.push_back(*marks.first_life);
+        if (marks.first_life) {
+            first.push_back(*marks.first_life);
+            sum.before_wear.add(marks.life_before_wear);
+        }
         if (marks.half_life) half.push_back(*marks.half_life);
         if (marks.life_wanted) sum.none_given.add(!marks.first_life);
     }
@@ -133,13 +136,20 @@ Confusion confusion(const std::vector<SectionOutcome>& all) {
     return counts;
 }
 
-Share right_causes(const Confusion& counts, bool of_what_was_told) {
+Share right_causes_of_what_was_told(const Confusion& counts) {
     Share share;
     for (const auto& [true_cause, told] : counts)
-        for (const auto& [told_cause, count] : told) {
-            if (of_what_was_told && told_cause == "nothing") continue;
-            for (int i = 0; i < count; ++i) share.add(is_right_cause(true_cause, told_cause));
-        }
+        for (const auto& [told_cause, count] : told)
+            if (told_cause != "nothing") share.add(is_right_cause(true_cause, told_cause), count);
+    return share;
+}
+
+Share right_causes_of_confounders(const Confusion& counts) {
+    Share share;
+    for (const auto& [true_cause, told] : counts) {
+        if (std::ranges::find(confounder_names, true_cause) == confounder_names.end()) continue;
+        for (const auto& [told_cause, count] : told) share.add(is_right_cause(true_cause, told_cause), count);
+    }
     return share;
 }
 
@@ -148,6 +158,13 @@ Share instruments_as_wear(const std::vector<SectionOutcome>& all) {
     for (const SectionOutcome& section : all)
         if (std::ranges::any_of(section.story.confounders, is_of_instrument) && !section.story.wears())
             share.add(section.of(Teller::ours).instrument_as_wear);
+    return share;
+}
+
+Share taken_over_told(const std::vector<SectionOutcome>& all) {
+    Share share;
+    for (const SectionOutcome& section : all)
+        if (section.story.taken_over) share.add(section.of(Teller::ours).told_at_end);
     return share;
 }
 

@@ -26,9 +26,9 @@ struct Share {
     int of = 0;
     int are = 0;
 
-    void add(bool is) {
-        ++of;
-        are += is ? 1 : 0;
+    void add(bool is, int times = 1) {
+        of += times;
+        are += is ? times : 0;
     }
     double percent() const { return of > 0 ? 100.0 * are / of : not_told; }
 };
@@ -60,6 +60,7 @@ struct Lives {
     double score_first = not_told;
     double score_half = not_told;
     Share none_given;
+    Share before_wear;  // first ranges given while nothing wore yet
 };
 
 // Threads: a value.
@@ -82,9 +83,11 @@ Confusion confusion(const std::vector<SectionOutcome>& all);
 
 // Whether what was told is right for what was true, or, of a trouble that needs no word, silence is.
 bool is_right_cause(const std::string& true_cause, const std::string& told_cause);
-Share right_causes(const Confusion& confusion, bool of_what_was_told);
+Share right_causes_of_what_was_told(const Confusion& confusion);
+Share right_causes_of_confounders(const Confusion& confusion);  // silence counted as it should be
 
 Share instruments_as_wear(const std::vector<SectionOutcome>& all);
 Share hidden_comparisons(const std::vector<SectionOutcome>& all);
+Share taken_over_told(const std::vector<SectionOutcome>& all);  // above sound at the end
 
 }  // namespace slipledger::judging

@@ -19,13 +19,15 @@ ActLimits act_limits_of(const config::Section& section) {
             .drain_share_percent = section.limits.drain_share_percent.act.value_or(nothing)};
 }
 
-Truth::Truth(const plantsim::Mill& mill, std::size_t pump, std::size_t section)
+Truth::Truth(const plantsim::Mill& mill, const SectionStory& story)
     : mill_(mill),
-      pump_(pump),
-      section_(section),
-      seen_(plantsim::seen_by(mill.plant().pumps[pump].sections[section].fitted)),
-      drawing_(mill.plant().pumps[pump]),
-      oil_(mill.plant().reservoirs[mill.plant().pumps[pump].reservoir].oil) {}
+      pump_(story.pump),
+      section_(story.section),
+      begins_(story.fitted_at.value_or(mill.plant().year_begins)),
+      seen_(story.inside ? Seen::everything
+                         : plantsim::seen_by(mill.plant().pumps[story.pump].sections[story.section].fitted)),
+      drawing_(mill.plant().pumps[story.pump]),
+      oil_(mill.plant().reservoirs[drawing_.reservoir].oil) {}
 
 double Truth::ratio(Seen seen, Millis at) const {
     return plantsim::true_ratio(mill_.life(pump_, section_, at), seen, oil_, drawing_.rated,
@@ -50,7 +52,7 @@ double Truth::points_lost(Seen seen, bool at_rated, Millis at) const {
 // Wear never heals, so halving the span finds the moment to the minute.
 template <typename Passed>
 std::optional<Millis> Truth::first(Passed passed) const {
-    Millis before = mill_.plant().year_begins;
+    Millis before = begins_;
     Millis after = mill_.plant().year_ends;
     if (!passed(after)) return std::nullopt;
     if (passed(before)) return before;
@@ -95,8 +97,7 @@ double Truth::life_h(Seen seen, bool at_rated, const ActLimits& limits, Millis a
 }
 
 double Truth::healthy_slip(Seen seen) const {
-    const Millis at = mill_.plant().year_begins;
-    const plantsim::Life& life = mill_.life(pump_, section_, at);
+    const plantsim::Life& life = mill_.life(pump_, section_, begins_);
     const plantsim::Strain point = plantsim::reference_point(drawing_.rated);
     const plantsim::Leakage lost = plantsim::leakage(life, oil_, point, drawing_.rated.pressure_bar);
     const double theoretical = life.displacement_cm3 * life.true_share * point.speed_rpm / 1000.0;

@@ -5,11 +5,11 @@
 #include <optional>
 
 #include "config/pump.hpp"
+#include "tools/judging/story.hpp"
 #include "tools/plantsim/mill.hpp"
 
 namespace slipledger::judging {
 
-using plantsim::Millis;
 using plantsim::Seen;
 
 // Where a life ends: the act limits. NaN: none.
@@ -24,9 +24,11 @@ ActLimits act_limits_of(const config::Section& section);
 // Threads: immutable, share freely. Its mill must outlive it.
 class Truth {
 public:
-    Truth(const plantsim::Mill& mill, std::size_t pump, std::size_t section);
+    Truth(const plantsim::Mill& mill, const SectionStory& story);
 
-    Seen seen() const { return seen_; }  // by the meter that counts: the drain's, where there is one
+    Seen seen() const {
+        return seen_;
+    }  // by the meter that counts: the drain's, where there is one and it sees the wear
 
     double ratio(Seen seen, Millis at) const;
     double efficiency(Seen seen, bool at_rated, Millis at) const;  // fraction
@@ -54,6 +56,7 @@ private:
     const plantsim::Mill& mill_;
     std::size_t pump_;
     std::size_t section_;
+    Millis begins_;  // of the life that is watched
     Seen seen_;
     const plantsim::PumpDrawing& drawing_;
     const plantsim::Oil& oil_;

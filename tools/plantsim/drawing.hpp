@@ -20,6 +20,9 @@ struct Duty {
     double fluid_temperature_c = 0.0;
 };
 
+// Whose leakage a meter sees: what runs out of the case, or what is missing at the outlet.
+enum class Seen { drain, everything };
+
 // How wear goes on, s being the share of its running hours that is over (wear.hpp has the formulas).
 enum class WearLaw {
     gap_power,    // the fastest gap grows as s^bend, so that the leak, which goes with the cube, speeds up by itself
@@ -38,6 +41,8 @@ struct Wear {
     double step_ratio = 1.0;
     WearLaw law = WearLaw::gap_power;
     double first_ratio = 1.0;  // where it stands when the life is first seen
+    bool inside =
+        false;  // its ratios are of all leakage, though the drain is metered: it wears where that sees nothing
 };
 
 // A cartridge, rotating group or gear set in service from `from` on.
@@ -48,6 +53,7 @@ struct Life {
     double dead_share = 0.3;        // volume that goes round full of oil under pressure / displacement
     std::vector<Gap> gaps{};
     Wear wear{};
+    double run_in_share = 0.0;  // by which the fastest gap is wider at first, until its surfaces have bedded in
 };
 
 // The meters of a section and of its pump: what one row can carry.
@@ -89,6 +95,7 @@ struct PumpDrawing {
     bool has_speed = true;
     bool has_temperature = true;
     bool has_running = false;
+    bool one_drain_meter = false;  // for all sections together
     bool has_inlet_pressure = false;
     bool has_case_pressure = false;
     std::optional<Millis> starts{};  // commissioned then; not given: before the year

@@ -33,17 +33,27 @@ double slot_conductance(double count, double width, double length, double height
     return count * width * height * height * height / (12.0 * length);
 }
 
+GapOil gap_oil(const Oil& oil, const Strain& strain) {
+    const double pressure_bar = std::max(0.0, strain.pressure_bar);
+    return {.viscosity_pas = gap_viscosity_pas(oil, strain.temperature_c, pressure_bar, strain.oil_age_years),
+            .density_kgm3 = density_kgm3(oil, strain.temperature_c)};
+}
+
 double gap_flow_lpm(const Gap& gap, const Oil& oil, const Strain& strain, double rated_bar) {
+    return gap_flow_lpm(gap, gap_oil(oil, strain), strain, rated_bar);
+}
+
+double gap_flow_lpm(const Gap& gap, const GapOil& oil, const Strain& strain, double rated_bar) {
     const double pressure_bar = std::max(0.0, strain.pressure_bar);
     const double load = pressure_bar / rated_bar;
     const double worn = 1.0 + gap.wears * (strain.growth - 1.0);
     const double height = worn * (1.0 + gap.opens_with_pressure * (load - usual_load));
     const double drop_pa = pressure_bar * pascal_per_bar;
-    const double density = density_kgm3(oil, strain.temperature_c);
+    const double density = oil.density_kgm3;
 
     // drop = laminar q + inertia q^2, solved for q: laminar while slow, held back by its own speed when wide open.
     const double open = gap.conductance_m3 * height * height * height * sideways(gap.eccentricity, load);
-    const double laminar = gap_viscosity_pas(oil, strain.temperature_c, pressure_bar, strain.oil_age_years) / open;
+    const double laminar = oil.viscosity_pas / open;
     const double area = gap.area_m2 * height;
     const double inertia = end_losses * density / (2.0 * area * area);
     const double slot_m3s = 2.0 * drop_pa / (laminar + std::sqrt(laminar * laminar + 4.0 * inertia * drop_pa));

@@ -37,7 +37,16 @@ double annulus_conductance(double count, double diameter, double length, double 
 double ring_conductance(double count, double inner_radius, double outer_radius, double height);
 double slot_conductance(double count, double width, double length, double height);
 
+// The oil as it is in every gap of a section at one moment. Threads: a value, share freely.
+struct GapOil {
+    double viscosity_pas = 0.0;
+    double density_kgm3 = 0.0;
+};
+
+GapOil gap_oil(const Oil& oil, const Strain& strain);
+
 // Flow through one family in L/min, >= 0.
+double gap_flow_lpm(const Gap& gap, const GapOil& oil, const Strain& strain, double rated_bar);
 double gap_flow_lpm(const Gap& gap, const Oil& oil, const Strain& strain, double rated_bar);
 
 }  // namespace slipledger::plantsim

@@ -12,8 +12,10 @@ namespace {
 constexpr Millis step = 5 * minute_ms;
 constexpr Millis warm_up = 4 * day_ms;  // before the year, so that tanks do not begin where they were put
 constexpr double case_bar = 0.6;
-constexpr double blocked_case_bar = 6.0;       // case pressure gained where nothing finds its way out
-constexpr double flooded_inlet_bar = 0.05;     // gauge, under the tank's level
+constexpr double blocked_case_bar = 6.0;    // case pressure gained where nothing finds its way out
+constexpr double flooded_inlet_bar = 0.05;  // gauge, under the tank's level
+constexpr double vanes_stick_above_cst = 70.0;
+constexpr double run_in_h = 15.0;              // over which surfaces bed in
 constexpr double starved_share_per_bar = 0.3;  // of delivery lost per bar the inlet lies lower
 constexpr double first_guess_c = 35.0;
 
@@ -48,6 +50,7 @@ struct Mill::PumpAtWork {
     Meter speed;
     Meter temperature;
     Meter inlet_pressure;
+    Meter drain;  // of all sections together
     Chance cavitation;
     std::vector<double> hours{};  // by step
     std::vector<SectionAtWork> sections{};
@@ -65,6 +68,7 @@ Mill::Mill(PlantDrawing plant, std::uint64_t seed)
                        .speed = Meter(speed_class(), seed, pump.id + "/speed"),
                        .temperature = Meter(temperature_class(), seed, pump.id + "/temperature"),
                        .inlet_pressure = Meter(low_pressure_class(), seed, pump.id + "/inlet"),
+                       .drain = Meter(drain_class(), seed, pump.id + "/drain"),
                        .cavitation = Chance(seed, pump.id + "/cavitation")}));
     count_hours();
     fit_wear(seed);
@@ -174,8 +178,20 @@ OilFill Mill::oil_at(std::size_t reservoir, Millis time) const {
 
 Strain Mill::strain_of(std::size_t pump, std::size_t section, Millis time) const {
     const Millis filled = oil_at(plant_.pumps[pump].reservoir, time).from;
+    const std::size_t at = life_at(pump, section, time);
+    const double hours = running_hours(pump, time) - pumps_[pump]->sections[section].begun_h[at];
+    const double bedding = life(pump, section, time).run_in_share * std::exp(-hours / run_in_h);
     return {.oil_age_years = calendar_.year_share(time) - calendar_.year_share(filled),
-            .growth = growth(pump, section, time)};
+            .growth = growth(pump, section, time) * (1.0 + bedding)};
+}
+
+Strain Mill::strain_at_work(std::size_t pump, std::size_t section, const Demand& demand, double speed,
+                            Millis time) const {
+    Strain strain = strain_of(pump, section, time);
+    strain.speed_rpm = speed;
+    strain.temperature_c = tank_c(plant_.pumps[pump].reservoir, time);
+    strain.pressure_bar = demand.doing == Doing::standing ? 0.0 : demand.pressure_bar - case_bar;
+    return strain;
 }
 
 double Mill::growth(std::size_t pump, std::size_t section, Millis time, double hours) const {
@@ -233,18 +249,28 @@ void Mill::show_honestly(std::size_t pump, Millis time, std::vector<Row>& rows) 
     std::vector<Demand> demands;
     for (std::size_t s = 0; s < drawing.sections.size(); ++s) demands.push_back(at_work.duty.demand(s, time));
     const double speed = shaft_speed(at_work, demands);
-    const double inlet_c = tank_c(drawing.reservoir, time);
     for (std::size_t s = 0; s < drawing.sections.size(); ++s) {
         Row row{.time = time,
                 .pump = drawing.id,
                 .section = drawing.sections.size() > 1 ? std::string_view(drawing.sections[s].id) : std::string_view()};
-        Strain strain = strain_of(pump, s, time);
-        strain.speed_rpm = speed;
-        strain.temperature_c = inlet_c;
-        show_section(pump, s, demands[s], strain, row);
+        show_section(pump, s, demands[s], strain_at_work(pump, s, demands[s], speed, time), row);
         if (s == 0) show_shaft_and_oil(pump, speed, row);  // what the sections share stands in the first one's row
         if (!row.empty()) rows.push_back(row);
     }
+    if (!drawing.one_drain_meter) return;
+    Row row{.time = time, .pump = drawing.id};
+    show_common_drain(pump, demands, speed, row);
+    if (!row.empty()) rows.push_back(row);
+}
+
+void Mill::show_common_drain(std::size_t pump, const std::vector<Demand>& demands, double speed, Row& row) const {
+    double lpm = 0.0;
+    for (std::size_t s = 0; s < demands.size(); ++s)
+        lpm += drained_lpm(pump, s, demands[s], strain_at_work(pump, s, demands[s], speed, row.time), row.time);
+    const Strain strain = strain_of(pump, 0, row.time);
+    const std::size_t tank = plant_.pumps[pump].reservoir;
+    const double cst = kinematic_cst(oil_at(tank, row.time).oil, tank_c(tank, row.time), strain.oil_age_years);
+    row[Column::case_drain_flow] = pumps_[pump]->drain.show(lpm, cst, row.time);
 }
 
 void Mill::show_shaft_and_oil(std::size_t pump, double speed, Row& row) const {
@@ -263,7 +289,8 @@ void Mill::show_shaft_and_oil(std::size_t pump, double speed, Row& row) const {
     }
 }
 
-void Mill::show_section(std::size_t pump, std::size_t section, const Demand& demand, Strain strain, Row& row) const {
+void Mill::show_section(std::size_t pump, std::size_t section, const Demand& demand, const Strain& strain,
+                        Row& row) const {
     const PumpDrawing& drawing = plant_.pumps[pump];
     const SectionDrawing& part = drawing.sections[section];
     const SectionAtWork& at_work = pumps_[pump]->sections[section];
@@ -276,8 +303,7 @@ void Mill::show_section(std::size_t pump, std::size_t section, const Demand& dem
     const double outlet_bar = standing ? locked_in_bar : demand.pressure_bar;
     row[Column::outlet_pressure] = at_work.pressure.show(outlet_bar, cst, row.time);
 
-    strain.pressure_bar = standing ? 0.0 : demand.pressure_bar - case_bar;
-    if (part.fitted.drain)
+    if (part.fitted.drain && !drawing.one_drain_meter)
         row[Column::case_drain_flow] =
             at_work.drain.show(drained_lpm(pump, section, demand, strain, row.time), cst, row.time);
     if (part.fitted.delivery)
@@ -314,11 +340,22 @@ double Mill::outlet_lpm(std::size_t pump, std::size_t section, const Demand& dem
         lpm *= 1.0 - compression(strain.temperature_c, strain.pressure_bar);
     // Bubbles drawn in take the place of oil; most of them is pressed into solution before the outlet.
     lpm *= 1.0 - 0.6 * total(of_tank, TroubleKind::air_in_oil, time);
+    lpm -= passing_lpm(pump, section, strain, time);
+    if (kinematic_cst(oil, strain.temperature_c, strain.oil_age_years) > vanes_stick_above_cst)
+        lpm *= left_of(drawing.troubles, TroubleKind::vanes_stick, time);
     // A pump that is not filled delivers less, and never twice the same.
     const double starved_bar = total(drawing.troubles, TroubleKind::inlet_starved, time);
     if (starved_bar <= 0.0) return lpm;
     return lpm *
            (1.0 - starved_share_per_bar * starved_bar * std::abs(1.0 + 0.5 * pumps_[pump]->cavitation.normal(time)));
+}
+
+// Through a valve that does not close, as through any hole.
+double Mill::passing_lpm(std::size_t pump, std::size_t section, const Strain& strain, Millis time) const {
+    const PumpDrawing& drawing = plant_.pumps[pump];
+    const double share = total(drawing.troubles, TroubleKind::valve_passes, time);
+    const double theoretical = life(pump, section, time).displacement_cm3 * strain.speed_rpm / 1000.0;
+    return share * theoretical * std::sqrt(strain.pressure_bar / drawing.rated.pressure_bar);
 }
 
 // What comes from the instruments and not from the pump.
@@ -345,6 +382,7 @@ double Mill::misread(std::size_t pump, const Trouble& trouble, const Row& row) c
     if (trouble.kind == TroubleKind::reads_more_by_share) return shown * (1.0 + size);
     if (trouble.kind == TroubleKind::reads_more_by) return shown + size;
     if (trouble.kind == TroubleKind::reads_nothing_but) return trouble.size;
+    if (trouble.kind == TroubleKind::silent) return no_value;
     std::vector<Row> when_it_stuck;
     show_honestly(pump, trouble.from, when_it_stuck);
     for (const Row& then : when_it_stuck)

@@ -52,13 +52,17 @@ private:
     std::size_t life_at(std::size_t pump, std::size_t section, Millis time) const;
     OilFill oil_at(std::size_t reservoir, Millis time) const;
     Strain strain_of(std::size_t pump, std::size_t section, Millis time) const;
+    Strain strain_at_work(std::size_t pump, std::size_t section, const Demand& demand, double speed, Millis time) const;
     void show_honestly(std::size_t pump, Millis time, std::vector<Row>& rows) const;
     void show_shaft_and_oil(std::size_t pump, double speed, Row& row) const;
-    void show_section(std::size_t pump, std::size_t section, const Demand& demand, Strain strain, Row& row) const;
+    void show_common_drain(std::size_t pump, const std::vector<Demand>& demands, double speed, Row& row) const;
+    void show_section(std::size_t pump, std::size_t section, const Demand& demand, const Strain& strain,
+                      Row& row) const;
     double drained_lpm(std::size_t pump, std::size_t section, const Demand& demand, const Strain& strain,
                        Millis time) const;
     double outlet_lpm(std::size_t pump, std::size_t section, const Demand& demand, const Strain& strain,
                       Millis time) const;
+    double passing_lpm(std::size_t pump, std::size_t section, const Strain& strain, Millis time) const;
     void mislead(std::size_t pump, Millis time, std::vector<Row>& rows, std::size_t first) const;
     double misread(std::size_t pump, const Trouble& trouble, const Row& row) const;
     double along(const std::vector<double>& course, Millis time) const;

@@ -7,8 +7,9 @@ namespace slipledger::plantsim {
 
 Leakage leakage(const Life& life, const Oil& oil, const Strain& strain, double rated_bar) {
     Leakage sum;
+    const GapOil in_gaps = gap_oil(oil, strain);
     for (const Gap& gap : life.gaps) {
-        const double flow = gap_flow_lpm(gap, oil, strain, rated_bar);
+        const double flow = gap_flow_lpm(gap, in_gaps, strain, rated_bar);
         (gap.to_drain ? sum.to_drain_lpm : sum.inside_lpm) += flow;
     }
     return sum;

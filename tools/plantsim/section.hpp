@@ -20,9 +20,6 @@ double delivered_lpm(const Life& life, const Oil& oil, const Strain& strain, dou
 Strain reference_point(const Duty& rated);
 Strain rated_point(const Duty& rated);
 
-// Whose leakage a meter sees.
-enum class Seen { drain, everything };
-
 Seen seen_by(const Fitted& fitted);  // the drain's, where that is metered
 
 // Leakage at the reference point at this growth / when healthy, as far as it is seen. New oil, no constant flows: the

@@ -21,11 +21,14 @@ enum class TroubleKind {
     pilot_flow,         // L/min more through the control to the drain
     inlet_starved,      // bar by which the inlet lies lower
     drain_blocked,      // share of the case leakage that no longer finds its way out
+    valve_passes,       // share of theoretical flow, at rated pressure, lost between pump and meter
+    vanes_stick,        // share of delivery lost while the oil is thick
     // Of an instrument: the one of `column`.
     stuck,                // shows what it showed when it began; size means nothing
     reads_more_by_share,  // share of the reading
     reads_more_by,        // in the reading's unit
     reads_nothing_but,    // shows this value
+    silent,               // sends nothing; size means nothing
     clock_off,            // minutes by which its logger's clock is ahead
 };
 

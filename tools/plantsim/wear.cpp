@@ -20,18 +20,23 @@ double between(const std::vector<std::pair<double, double>>& table, double at) {
     return left->second + share * (right->second - left->second);
 }
 
+// Of whose leakage the drawing gives the ratios.
+Seen ratios_of(const Life& life, const Fitted& fitted) {
+    return life.wear.inside ? Seen::everything : seen_by(fitted);
+}
+
 }  // namespace
 
 WearCourse::WearCourse(const Life& life, const Fitted& fitted, const Oil& oil, const Duty& rated, double span_hours)
     : wear_(life.wear),
       span_hours_(span_hours),
-      first_growth_(growth_for(life, seen_by(fitted), oil, rated, wear_.first_ratio)),
-      end_growth_(growth_for(life, seen_by(fitted), oil, rated, std::max(wear_.end_ratio, wear_.first_ratio))),
-      step_growth_(growth_for(life, seen_by(fitted), oil, rated, wear_.step_ratio)) {
+      first_growth_(growth_for(life, ratios_of(life, fitted), oil, rated, wear_.first_ratio)),
+      end_growth_(growth_for(life, ratios_of(life, fitted), oil, rated, std::max(wear_.end_ratio, wear_.first_ratio))),
+      step_growth_(growth_for(life, ratios_of(life, fitted), oil, rated, wear_.step_ratio)) {
     if (wear_.law == WearLaw::gap_power) return;
     for (int i = 0; i <= table_steps; ++i) {
         const double growth = std::pow(widest_growth, static_cast<double>(i) / table_steps);
-        ratio_of_growth_.emplace_back(true_ratio(life, seen_by(fitted), oil, rated, growth), growth);
+        ratio_of_growth_.emplace_back(true_ratio(life, ratios_of(life, fitted), oil, rated, growth), growth);
     }
 }
 

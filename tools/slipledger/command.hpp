@@ -49,10 +49,18 @@ const config::Section& section_named(const config::Pump& pump, const std::string
 
 void add_fleet(CLI::App& app, Shared& shared);
 void add_health(CLI::App& app, Shared& shared);
+void add_explain(CLI::App& app, Shared& shared);
 void add_history(CLI::App& app, Shared& shared);
 void add_alerts(CLI::App& app, Shared& shared);
+void add_lives(CLI::App& app, Shared& shared);
 void add_acknowledge(CLI::App& app, Shared& shared);
 void add_replaced(CLI::App& app, Shared& shared);
+void add_oil_changed(CLI::App& app, Shared& shared);
+void add_oil_sample(CLI::App& app, Shared& shared);
+void add_compensator_set(CLI::App& app, Shared& shared);
+void add_instrument_changed(CLI::App& app, Shared& shared);
+void add_reference_test(CLI::App& app, Shared& shared);
+void add_settle(CLI::App& app, Shared& shared);
 void add_note(CLI::App& app, Shared& shared);
 void add_load(CLI::App& app, Shared& shared);
 void add_export(CLI::App& app, Shared& shared);

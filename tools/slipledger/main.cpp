@@ -19,9 +19,12 @@ namespace {
 
 using namespace slipledger::command;
 
-constexpr std::array<void (*)(CLI::App&, Shared&), 12> commands{
-    add_fleet,    add_health, add_history, add_alerts, add_acknowledge, add_replaced,
-    add_note,     add_load,   add_export,  add_status, add_backup,      add_check_plant,
+constexpr std::array<void (*)(CLI::App&, Shared&), 20> commands{
+    add_fleet,       add_health,     add_history,         add_explain,            add_alerts,
+    add_lives,       add_acknowledge, add_replaced,       add_oil_changed,        add_oil_sample,
+    add_compensator_set,             add_instrument_changed, add_reference_test,  add_settle,
+    add_note,        add_load,       add_export,          add_status,             add_backup,
+    add_check_plant,
 };
 
 int complain(const std::exception& e, int status) {

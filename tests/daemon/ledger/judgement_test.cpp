@@ -38,7 +38,10 @@ SummaryRecord full_summary(Instant start, std::int32_t date) {
     s.life = 3;
     for (auto& count : s.counts) count = n.whole();
     for (double* field : {&s.running_h, &s.judged_h, &s.stop_flow_lpm, &s.drain_share, &s.highest_temperature_c,
-                          &s.highest_case_bar, &s.lowest_inlet_bar})
+                          &s.highest_case_bar, &s.lowest_inlet_bar, &s.mean_flow_lpm, &s.mean_speed_rpm,
+                          &s.mean_temperature_c, &s.flow_lpm.low, &s.flow_lpm.high, &s.pressure_bar.low,
+                          &s.pressure_bar.high, &s.speed_rpm.low, &s.speed_rpm.high, &s.temperature_c.low,
+                          &s.temperature_c.high})
         *field = n.next();
     s.stop_count = n.whole();
     s.mean_pressure_bar = std::nan("");
@@ -77,11 +80,28 @@ DayRecord full_day(std::int32_t date) {
     v.efficiency_at_rated = false;
     for (double* field : {&v.efficiency_baseline, &v.clearance_growth_percent, &v.leakage_lpm, &v.excess_lpm,
                           &v.leakage_kw, &v.step_ratio, &v.cause_weight, &v.running_h, &v.judged_h, &v.life_running_h,
-                          &v.life_judged_h, &v.learning_h_left, &v.share_judged_30d, &v.slip_coefficient, &v.zero_lpm})
+                          &v.life_judged_h, &v.learning_h_left, &v.share_judged_30d, &v.slip_coefficient, &v.zero_lpm,
+                          &v.healthy.laminar, &v.healthy.orifice, &v.healthy.speed, &v.healthy_sd,
+                          &v.replacement.ratio_before, &v.replacement.ratio_after})
         *field = n.next();
+    v.baseline = analytics::BaselineKind::sisters;
+    v.replacement.at = day_one - 24h;
     v.trend = {.per_1000_h = ranged(n), .established = true, .onset = day_one - 240h};
-    v.hours_in_hand = {.low = n.next(), .mid = n.next(), .high = n.next(), .limit = "efficiency"};
+    v.hours_in_hand = {
+        .low = n.next(), .mid = n.next(), .high = n.next(), .limit = "efficiency", .duty_h_per_day = n.next()};
+    analytics::DayState& s = v.state;
+    for (double* field : {&s.wear, &s.drift, &s.disturbance, &s.wear_variance, &s.wear_drift_covariance,
+                          &s.drift_variance, &s.wear_disturbance_covariance, &s.drift_disturbance_covariance,
+                          &s.disturbance_variance})
+        *field = n.next();
+    s.let_go = true;
+    for (double& weight : s.laws) weight = n.next();
     v.cause = analytics::CauseKind::sudden_damage;
+    analytics::RankedCause cause{.kind = v.cause, .weight = n.next(), .in_favour = {}, .against = {}};
+    cause.in_favour.push_back({.sign = analytics::Sign::step, .present = true, .value = std::sqrt(2.0F), .adds = 3.0F});
+    cause.against.push_back({.sign = analytics::Sign::stuck, .value = 1.1F, .beside = 12.0F,
+                             .quantity = Quantity::shaft_speed, .adds = -std::sqrt(3.0F)});
+    v.causes = {cause, {.kind = analytics::CauseKind::feed_silent, .weight = n.next(), .in_favour = {}, .against = {}}};
     return record;
 }
 
@@ -170,6 +190,12 @@ TEST_F(Judgement, OfADayComesBackInEveryField) {
     EXPECT_EQ(text_of(record), text_of(*back));
     EXPECT_EQ(back->verdict.hours_in_hand.limit, "efficiency");
     EXPECT_EQ(back->verdict.trend.onset, day_one - 240h);
+    ASSERT_THAT(back->verdict.causes, SizeIs(2));
+    const analytics::Evidence& against = back->verdict.causes[0].against.at(0);
+    EXPECT_EQ(against.sign, analytics::Sign::stuck);
+    EXPECT_EQ(against.quantity, Quantity::shaft_speed);
+    EXPECT_EQ(against.adds, -std::sqrt(3.0F));
+    EXPECT_TRUE(std::isnan(back->verdict.causes[0].in_favour.at(0).beside));
     EXPECT_THAT(reader().days(track(), 20458, 20459), SizeIs(1));
     EXPECT_THAT(reader().days(track(), 20459, 20500), IsEmpty());
 }
@@ -265,6 +291,31 @@ TEST_F(Judgement, ClearsItsMarkOrKeepsItFromWhereThePassWasCut) {
     EXPECT_FALSE(ledger().store(cut)) << "a mark kept is a new generation";
     EXPECT_TRUE(ledger().store(result_for(again)));
     EXPECT_THAT(reader().marks(), IsEmpty());
+}
+
+TEST_F(Judgement, KeepsWhatALifeWasToldOfItsSistersUntilItBeginsAnew) {
+    store({row_of(point("press-1"), day_one, {{Quantity::outlet_pressure, 1.0}})});
+    const TrackId track = ledger().directory().track("press-1", "A", analytics::Basis::case_drain).id;
+    const auto store_result = [&](std::int32_t from_date, std::vector<LifePriorRecord> priors) {
+        AnalysisResult result;
+        result.pump = pump("press-1");
+        result.generation = 0;
+        TrackResult judged;
+        judged.track = track;
+        judged.from = Instant::min();
+        judged.from_date = from_date;
+        judged.life_priors = std::move(priors);
+        result.tracks.push_back(judged);
+        ASSERT_TRUE(ledger().store(result));
+    };
+    store_result(0, {{track, 1, 100, day_one, "A71", "[]"}, {track, 2, 200, day_one + 1h, "A71", "[1]"}});
+    ASSERT_TRUE(reader().life_prior(track, 2));
+    EXPECT_EQ(reader().life_prior(track, 2)->sisters, "[1]");
+    EXPECT_EQ(reader().life_prior(track, 2)->begins, day_one + 1h);
+    EXPECT_THAT(reader().life_priors_after(100), SizeIs(1));
+    store_result(150, {});
+    EXPECT_FALSE(reader().life_prior(track, 2));
+    EXPECT_EQ(reader().life_prior(track, 1)->model, "A71");
 }
 
 }  // namespace

@@ -111,5 +111,34 @@ TEST(WatchedFromNew, IsAPartFittedByAnEventOrAPumpWatchedWithinAWeekOfItsSince) 
     EXPECT_FALSE(watched_from_new(first, facts, fitted - 1h));
 }
 
+TEST(Lives, AreOfTheModelTheyTellOrThePlantFileToldWhenTheyWereFitted) {
+    const std::vector<FactsFrom> facts{{Instant{}, R"({"sections":{"A":{"model":"A71"}}})", std::nullopt},
+                                       {fitted, R"({"sections":{"A":{"model":"B71"}}})", std::nullopt}};
+    config::Section today;
+    today.model = "B71";
+    Life life;
+    EXPECT_EQ(model_of(life, facts, today), "A71");
+    life.since = fitted + 1h;
+    EXPECT_EQ(model_of(life, facts, today), "B71");
+    life.model = "C71";
+    EXPECT_EQ(model_of(life, facts, today), "C71");
+    EXPECT_EQ(model_of(Life{}, {}, today), "B71");
+}
+
+TEST(Events, ConcernAPumpWhenTheyAreItsOwnOrOfAReservoirThatEverWasIts) {
+    Event own = event(1, "note", fitted, "{}");
+    Event moved = event(2, "plant-changed", fitted, R"({"now":{"reservoir":"old-tank"}})");
+    const auto of_tank = [](std::int64_t id, const std::string& tank) {
+        Event made = event(id, "oil-changed", fitted, R"({"reservoir":")" + tank + R"("})");
+        made.pump.clear();
+        return made;
+    };
+    config::Pump press = pump(71);
+    press.reservoir = "tank";
+    const auto kept = events_concerning(press, {own, moved, of_tank(3, "tank"), of_tank(4, "old-tank"), of_tank(5, "other")});
+    ASSERT_EQ(kept.size(), 4U);
+    EXPECT_EQ(kept.back().id, 4);
+}
+
 }  // namespace
 }  // namespace slipledger::ledger

@@ -40,6 +40,9 @@ class OpenLedger : public LedgerTest {};
 TEST_F(OpenLedger, KnowsEachReleasedMigrationByItsHash) {
     const std::vector<std::pair<std::string, std::string>> released{
         {"0001_begin.sql", "1cd138fbc96fc3560cf6c15fde715085d7cd9169e3b80d60e0ea95ba74c2cd28"},
+        {"0002_lives.sql", "72fbdd2a6467eebdf0aa3d11f06db8d6079ca90bb2866e9833c702dd94a19ce2"},
+        {"0003_causes.sql", "2e6b8d335becd2eb715bd75ef7d447a2dc94e4ba3b41e30fe900c7679bede6b9"},
+        {"0004_day_state.sql", "741942e0f0f1d21321146fa5bbd5607b3ea4033cb77d3460e5a0116eca51c8fc"},
     };
     const auto migrations = schema::ledger_migrations();
     ASSERT_THAT(migrations, SizeIs(released.size()));

@@ -79,6 +79,115 @@ TEST_F(Readings, OfACorrectingFeedSettleTheDispute) {
                 ElementsAre(181.0));
 }
 
+// What somebody settled holds whichever came first, the readings or the word, and in whatever order the readings came.
+class SettledReadings : public Readings {
+protected:
+    SettledReadings() { plant_.reservoirs.push_back({.id = "tank-2", .name = "Tank 2", .fluid = {}, .volume_l = {}}); }
+
+    FeedId feed(const std::string& id) { return ledger().directory().feeds.at(id); }
+    void tell(PointId at, Instant time, Quantity quantity, double value, const std::string& by) {
+        store({row_of(at, time, {{quantity, value}}, feed(by))});
+    }
+    void settle(const std::string& pump, Instant from, Instant to, const std::string& more, const std::string& section = "") {
+        Event event;
+        event.pump = pump;
+        event.section = section;
+        event.kind = "settled";
+        event.at = from;
+        event.body = R"({"to_ms":)" + std::to_string(to.time_since_epoch().count()) + "," + more + "}";
+        ledger().store(event);
+    }
+    double pressure(PointId at, Instant time) {
+        const PointRows rows = reader().rows(at, time, time + 1ms);
+        const auto& values = column(rows, Quantity::outlet_pressure);
+        return values.empty() ? std::numeric_limits<double>::quiet_NaN() : values.front();
+    }
+};
+
+TEST_F(SettledReadings, AreThoseOfTheFeedThatIsBelieved) {
+    const PointId press = point("press-1");
+    for (const int minute : {0, 30, 60}) {
+        tell(press, day_one + std::chrono::minutes(minute), Quantity::outlet_pressure, 170.0 + minute, "plc");
+        tell(press, day_one + std::chrono::minutes(minute), Quantity::outlet_pressure, 180.0 + minute, "lab");
+    }
+    EXPECT_EQ(reader().count(press).disputed, 3U);
+    settle("press-1", day_one, day_one + 30min, R"("believe":"lab")");
+    EXPECT_EQ(pressure(press, day_one), 180.0);
+    EXPECT_EQ(pressure(press, day_one + 30min), 210.0) << "both ends of the span are in it";
+    EXPECT_TRUE(std::isnan(pressure(press, day_one + 60min)));
+    EXPECT_EQ(reader().count(press).disputed, 1U);
+    store({row_of(press, day_one + 3h, {{Quantity::outlet_pressure, 1.0}})});
+    close_all_hours();
+    EXPECT_EQ(pressure(press, day_one), 180.0) << "in a block as in `recent`";
+    EXPECT_EQ(reader().count(press).disputed, 1U);
+}
+
+TEST_F(SettledReadings, AreTheSameInWhateverOrderTheyAndTheWordCame) {
+    const auto way = [&](bool word_first, bool lab_first) {
+        const PointId at = point(word_first ? (lab_first ? "press-1" : "press-2") : (lab_first ? "lathe" : "double"));
+        const std::string pump = word_first ? (lab_first ? "press-1" : "press-2") : (lab_first ? "lathe" : "double");
+        if (word_first) settle(pump, day_one, day_one + 1h, R"("believe":"plc","quantity":"outlet_pressure")");
+        for (const std::string by : {lab_first ? "lab" : "plc", lab_first ? "plc" : "lab"})
+            tell(at, day_one, Quantity::outlet_pressure, by == "plc" ? 170.0 : 180.0, by);
+        if (!word_first) settle(pump, day_one, day_one + 1h, R"("believe":"plc","quantity":"outlet_pressure")");
+        return pressure(at, day_one);
+    };
+    for (const bool word_first : {true, false})
+        for (const bool lab_first : {true, false}) EXPECT_EQ(way(word_first, lab_first), 170.0);
+}
+
+TEST_F(SettledReadings, GoByTheNewestWordAndByAPersonBeforeAPlantFile) {
+    plant_.feeds[1].corrects = "plc";
+    const PointId press = point("press-1");
+    tell(press, day_one, Quantity::outlet_pressure, 170.0, "plc");
+    tell(press, day_one, Quantity::outlet_pressure, 180.0, "lab");
+    EXPECT_EQ(pressure(press, day_one), 180.0) << "lab corrects plc";
+    settle("press-1", day_one, day_one, R"("believe":"plc")");
+    EXPECT_EQ(pressure(press, day_one), 170.0);
+    settle("press-1", day_one, day_one, R"("believe":"lab")");
+    EXPECT_EQ(pressure(press, day_one), 180.0);
+    settle("press-1", day_one, day_one, R"("believe":"command")");  // has told nothing here
+    EXPECT_EQ(pressure(press, day_one), 180.0);
+    settle("press-1", day_one, day_one, R"("believe":"nobody")");
+    EXPECT_EQ(pressure(press, day_one), 180.0);
+}
+
+TEST_F(SettledReadings, AreOfTheirQuantityAndSectionAloneWhereOneIsNamed) {
+    const PointId one = point("double", "P1");
+    const PointId other = point("double", "P2");
+    const PointId shaft = point("double");
+    for (const PointId at : {one, other, shaft})
+        for (const auto& [by, value] : {std::pair("plc", 170.0), std::pair("lab", 180.0)}) {
+            tell(at, day_one, Quantity::outlet_pressure, value, by);
+            tell(at, day_one, Quantity::case_drain_flow, value, by);
+        }
+    settle("double", day_one, day_one, R"("believe":"lab","quantity":"outlet_pressure")", "P2");
+    EXPECT_TRUE(std::isnan(pressure(one, day_one)));
+    EXPECT_EQ(pressure(other, day_one), 180.0);
+    EXPECT_TRUE(column(reader().rows(other, day_one, day_one + 1ms), Quantity::case_drain_flow).empty());
+    settle("double", day_one, day_one, R"("believe":"plc")");
+    for (const PointId at : {one, other, shaft}) EXPECT_EQ(pressure(at, day_one), 170.0);
+    EXPECT_EQ(column(reader().rows(other, day_one, day_one + 1ms), Quantity::case_drain_flow).front(), 170.0);
+}
+
+TEST_F(SettledReadings, OfAReservoirAreSettledByItsName) {
+    const PointId tank = ledger().directory().reservoirs.at("tank-1");
+    for (const auto& [by, value] : {std::pair("plc", 41.0), std::pair("lab", 45.0)})
+        tell(tank, day_one, Quantity::fluid_temperature, value, by);
+    settle("", day_one, day_one, R"("believe":"lab","reservoir":"tank-2")");
+    EXPECT_TRUE(column(reader().rows(tank, day_one, day_one + 1ms), Quantity::fluid_temperature).empty());
+    settle("", day_one, day_one, R"("believe":"lab","reservoir":"tank-1")");
+    EXPECT_EQ(column(reader().rows(tank, day_one, day_one + 1ms), Quantity::fluid_temperature).front(), 45.0);
+}
+
+TEST_F(SettledReadings, StayDisputedWhereTheBelievedFeedContradictsItself) {
+    const PointId press = point("press-1");
+    for (const double value : {180.0, 181.0}) tell(press, day_one, Quantity::outlet_pressure, value, "lab");
+    settle("press-1", day_one, day_one, R"("believe":"lab")");
+    EXPECT_TRUE(std::isnan(pressure(press, day_one)));
+    EXPECT_EQ(reader().count(press).disputed, 1U);
+}
+
 // 20 rows a second for an hour and a half are more than `recent` may hold: the watermark moves within the hour, and what is
 // told late, again or otherwise meets a block that has begun.
 TEST_F(Readings, OfACrowdedHourAreMovedBeforeItEndsAndComeBackTheSame) {

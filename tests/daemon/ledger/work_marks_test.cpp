@@ -118,5 +118,67 @@ TEST_F(WorkMark, RemembersHowFarEachPumpHasCome) {
     EXPECT_FALSE(reader().newest(pump("press-2")));
 }
 
+class EventMark : public WorkMark {
+protected:
+    std::vector<Mark> marks_of(const std::string& kind, const std::string& pump, Instant at, const std::string& body) {
+        judge_all();
+        Event event;
+        event.pump = pump;
+        event.kind = kind;
+        event.at = at;
+        event.body = body;
+        ledger().store(event);
+        return reader().marks();
+    }
+};
+
+TEST_F(EventMark, OfASettledDisputeSpansAllOfIt) {
+    tell("press-1", day_one);
+    tell("press-1", day_one + 30h);
+    const auto to = std::to_string((day_one + 9h).time_since_epoch().count());
+    const auto marks = marks_of("settled", "press-1", day_one + 2h + 20min, R"({"believe":"plc","to_ms":)" + to + "}");
+    ASSERT_THAT(marks, SizeIs(1));
+    EXPECT_EQ(marks[0].from, day_one + 2h);
+    EXPECT_EQ(marks[0].to, day_one + 9h);
+}
+
+TEST_F(EventMark, OfAReservoirIsRaisedForThePumpsThatDrawFromItOrOnceDid) {
+    plant_.reservoirs.push_back({.id = "tank-2", .name = "Tank 2", .fluid = {}, .volume_l = {}});
+    plant_.pumps[2].reservoir = "tank-2";  // lathe
+    for (const char* id : {"press-1", "press-2", "lathe"}) {
+        tell(id, day_one);
+        tell(id, day_one + 30h);
+    }
+    const auto two = marks_of("oil-changed", "", day_one + 5h, R"({"reservoir":"tank-2"})");
+    ASSERT_THAT(two, SizeIs(1));
+    EXPECT_EQ(two[0].pump, pump("lathe"));
+    EXPECT_EQ(two[0].from, day_one + 5h);
+    EXPECT_THAT(marks_of("oil-changed", "", day_one + 5h, R"({"reservoir":"tank-1"})"), SizeIs(2));
+    marks_of("plant-changed", "press-2", Instant{}, R"({"now":{"reservoir":"tank-2"}})");
+    EXPECT_THAT(marks_of("oil-sample", "", day_one + 5h, R"({"reservoir":"tank-2"})"), SizeIs(2));
+    EXPECT_THAT(marks_of("oil-changed", "", day_one + 5h, R"({"reservoir":["tank-2"]})"), SizeIs(3)) << "of nobody knows whom";
+    EXPECT_THAT(marks_of("note", "press-1", day_one + 5h, "{}"), IsEmpty());
+}
+
+TEST_F(EventMark, OfALifeToldOtherwiseIsRaisedWithTheResultThatToldIt) {
+    tell("press-1", day_one);
+    tell("press-1", day_one + 30h);
+    tell("press-2", day_one);
+    tell("press-2", day_one + 30h);
+    const auto marks = reader().marks();
+    AnalysisResult result;
+    result.pump = marks[0].pump;
+    result.generation = marks[0].generation;
+    ledger().store(result);
+    result.pump = marks[1].pump;
+    result.generation = marks[1].generation;
+    result.told_otherwise = {{marks[0].pump, day_one + 3h}};
+    ledger().store(result);
+    const auto left = reader().marks();
+    ASSERT_THAT(left, SizeIs(1));
+    EXPECT_EQ(left[0].pump, marks[0].pump);
+    EXPECT_EQ(left[0].from, day_one + 3h);
+}
+
 }  // namespace
 }  // namespace slipledger::ledger

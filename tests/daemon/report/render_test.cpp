@@ -47,8 +47,61 @@ TEST(HealthJson, HasEveryFieldOfTheContract) {
         EXPECT_TRUE(json["volumetric_efficiency"].contains(key)) << key;
     for (const char* key : {"low", "mid", "high", "limit"}) EXPECT_TRUE(json["hours_in_hand"].contains(key)) << key;
     for (const char* key : {"readings", "used", "disputed", "set_aside"}) EXPECT_TRUE(json["data"].contains(key)) << key;
-    for (const char* key : {"number", "started", "running_hours", "baseline"})
+    for (const char* key : {"number", "started", "running_hours", "baseline", "compared_with", "events",
+                            "unrecorded_replacement"})
         EXPECT_TRUE(json["life"].contains(key)) << key;
+}
+
+// 1000 h in hand at 16 h a day, worn since a day in a range, and what the days say by themselves.
+SectionHealth looked_back_on() {
+    SectionHealth health = worn_section("A");
+    const analytics::Instant march = std::chrono::sys_days{std::chrono::year{2026} / 3 / 1};
+    health.verdict->trend.onset = march;
+    health.verdict->hours_in_hand.duty_h_per_day = 16.0;
+    health.onset_range = {std::nullopt, march + std::chrono::days(9)};
+    health.dates_in_hand = {march + std::chrono::days(100), march + std::chrono::days(130), std::nullopt};
+    analytics::Witnesses witnesses;
+    witnesses.days = 90;
+    witnesses.slope_per_1000_h = {0.21, 0.12, 0.33};
+    witnesses.rank_z = 2.4;
+    witnesses.rank_p = 0.0164;
+    witnesses.cumulative_sum = 1.24;
+    witnesses.sum_passed = 20530;
+    witnesses.weighted_mean = {2.0, 1.9, 2.2};
+    witnesses.shape = analytics::stats::Shape::ramp;
+    witnesses.changed = 20513;
+    health.witnesses = witnesses;
+    return health;
+}
+
+TEST(HealthJson, TellsOnsetWithItsRangeDatesInHandAndSecondWitnesses) {
+    const auto json = to_json(looked_back_on());
+    EXPECT_EQ(json["trend"]["onset"], "2026-03-01T00:00:00Z");
+    EXPECT_TRUE(json["trend"]["onset_range"]["low"].is_null());
+    EXPECT_EQ(json["trend"]["onset_range"]["high"], "2026-03-10T00:00:00Z");
+    EXPECT_EQ(json["hours_in_hand"]["duty_h_per_week"], 112.0);
+    EXPECT_EQ(json["hours_in_hand"]["date"]["low"], "2026-06-09T00:00:00Z");
+    EXPECT_TRUE(json["hours_in_hand"]["date"]["high"].is_null());
+    const auto& told = json["trend"]["witnesses"];
+    EXPECT_EQ(told["theil_sen"]["high"], 0.33);
+    EXPECT_EQ(told["mann_kendall"]["p"], 0.0164);
+    EXPECT_EQ(told["cumulative_sum"]["limit"], 0.25);
+    EXPECT_EQ(told["cumulative_sum"]["passed"], "2026-03-18");
+    EXPECT_EQ(told["shape"]["name"], "ramp");
+    EXPECT_EQ(told["shape"]["changed"], "2026-03-01");
+    EXPECT_TRUE(to_json(worn_section("A"))["trend"]["witnesses"].is_null());
+}
+
+TEST(HealthText, TellsOnsetDatesAndSecondWitnessesWithinThePage) {
+    config::Plant plant;
+    plant.time_zone = "Europe/Berlin";
+    const std::string text = health_text(looked_back_on(), plant, Paper{});
+    std::istringstream lines(text);
+    for (std::string line; std::getline(lines, line);) EXPECT_LE(line.size(), page_width) << line;
+    EXPECT_THAT(text, testing::HasSubstr("2026-03-01 (earlier to 2026-03-10)"));
+    EXPECT_THAT(text, testing::HasSubstr("2026-07-09"));
+    EXPECT_THAT(text, testing::HasSubstr("robust slope +0.21 (+0.12 to +0.33) per 1000 h"));
+    EXPECT_THAT(text, testing::HasSubstr("passed 2026-03-18"));
 }
 
 TEST(HealthJson, GivesNullForWhatIsNotKnownAndSixDigitsForTheRest) {
@@ -81,6 +134,45 @@ TEST(HealthText, TellsTheNewestEventsAndMakesThemPrintable) {
     EXPECT_THAT(text, testing::HasSubstr("  1970-01-02  note, by fitter: strainer?[2J cleaned\n"));
     EXPECT_THAT(text, testing::Not(testing::HasSubstr("\033")));
     EXPECT_EQ(to_json(health)["events"].size(), 7U);
+}
+
+TEST(Health, OffersAReplacementThatNobodyTold) {
+    SectionHealth health = worn_section("A");
+    EXPECT_TRUE(to_json(health)["life"]["unrecorded_replacement"].is_null());
+    const analytics::Instant at = analytics::Instant{} + std::chrono::hours(24 * 365);
+    health.verdict->replacement = {at, 1.93, 1.02};
+    const std::string text = health_text(health, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("Looks like a replacement on 1971-01-01: the ratio fell from 1.9 to 1.0."));
+    EXPECT_THAT(text, testing::HasSubstr("slipledger replaced press-2 --section A --at 1971-01-01T00:00:00Z --by NAME"));
+    const auto json = to_json(health)["life"]["unrecorded_replacement"];
+    EXPECT_EQ(json["at"], "1971-01-01T00:00:00Z");
+    EXPECT_EQ(json["ratio_before"], 1.93);
+    EXPECT_EQ(json["if_so"], "slipledger replaced press-2 --section A --at 1971-01-01T00:00:00Z --by NAME");
+}
+
+TEST(HealthJson, ListsTheEventsOfTheLifeInService) {
+    SectionHealth health = worn_section("A");
+    const auto day = [](int n) { return analytics::Instant{} + std::chrono::hours(24 * n); };
+    health.events = {{day(30), "oil-changed", "", "fitter", "VG 32, VI 150"}, {day(3), "note", "", "fitter", "of the life before"}};
+    health.life.started = day(10);
+    const auto json = to_json(health);
+    EXPECT_EQ(json["events"].size(), 2U);
+    ASSERT_EQ(json["life"]["events"].size(), 1U);
+    EXPECT_EQ(json["life"]["events"][0]["text"], "VG 32, VI 150");
+}
+
+TEST(HistoryText, DrawsEventsBetweenTheDays) {
+    HistoryRow day;
+    day.section = "A";
+    day.level = Level::sound;
+    HistoryRow changed = day;
+    changed.time = analytics::Instant{} + std::chrono::hours(24);
+    changed.stood_still = true;
+    changed.events = {{changed.time + std::chrono::hours(7), "oil-changed", "", "fitter", "VG 32, VI 150, in press-tank"}};
+    const std::string text = history_text({day, changed, day}, config::Plant{}, Paper{});
+    EXPECT_THAT(text, testing::HasSubstr("1970-01-02 07:00 - oil-changed, by fitter: VG 32, VI 150, in press-tank\n"));
+    EXPECT_EQ(to_json(std::vector{day, changed})[1]["events"][0]["kind"], "oil-changed");
+    EXPECT_FALSE(to_json(std::vector{day, changed})[0].contains("events"));
 }
 
 TEST(AlertsText, SaysWhoAcknowledgedAndWhy) {

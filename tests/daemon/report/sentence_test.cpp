@@ -33,10 +33,35 @@ TEST(Sentence, OfAWornSectionIsWhatAnEngineerWouldSay) {
               "running hours to its limit of 3. Order a rotating group.");
 }
 
+// 523 h at 16 h a day are 32.7 days, 310 h are 19.4.
+TEST(Sentence, TurnsHoursInHandIntoDatesAtThePlantsDuty) {
+    SentenceFacts facts = worn();
+    facts.time_zone = "Europe/Berlin";
+    facts.verdict.day.end = std::chrono::sys_days{std::chrono::year{2026} / 3 / 1};
+    facts.verdict.hours_in_hand.duty_h_per_day = 16.0;
+    EXPECT_NE(sentence(facts).find("to its limit of 3, around 2026-04-02 and hardly before 2026-03-20. Order"),
+              std::string::npos)
+        << sentence(facts);
+    facts.verdict.hours_in_hand.duty_h_per_day = 0.0;
+    EXPECT_EQ(sentence(facts).find("around"), std::string::npos);
+}
+
 TEST(Sentence, NamesTheDateWhereWatchingBeganOnAUsedPump) {
     SentenceFacts facts = worn();
-    facts.compared_with = "when watching began (2026-01-05)";
+    facts.compared_with = compared_with(analytics::BaselineKind::watching_began, false, "2026-01-05");
     EXPECT_NE(sentence(facts).find("what it did when watching began (2026-01-05),"), std::string::npos);
+}
+
+TEST(Sentence, SaysWhatElseItIsComparedWith) {
+    using analytics::BaselineKind;
+    EXPECT_EQ(compared_with(BaselineKind::from_new, true, ""), "what it did when new");
+    EXPECT_EQ(compared_with(BaselineKind::maker_test, true, ""), "what it did when new") << "watched from new, it says so itself";
+    EXPECT_EQ(compared_with(BaselineKind::maker_test, false, ""), "what its maker measured when it was new");
+    EXPECT_EQ(compared_with(BaselineKind::reference_test, false, ""), "what a reference test showed when it was as new");
+    SentenceFacts facts = worn();
+    facts.compared_with = compared_with(BaselineKind::sisters, false, "2026-01-05");
+    EXPECT_NE(sentence(facts).find("leaks 2.1 times (1.9 to 2.3) what its sisters do when healthy, at the same"),
+              std::string::npos);
 }
 
 TEST(Sentence, OfASoundPumpClaimsNoTrend) {

@@ -21,6 +21,12 @@ TEST(LocalTime, IsThePlantsWithItsZone) {
     EXPECT_EQ(local_date(march_first, "America/Los_Angeles"), "2026-02-28");
 }
 
+TEST(LocalTime, TellsSecondsOfSingleReadings) {
+    EXPECT_EQ(local_second(march_first + milliseconds(5'400), "Europe/Helsinki"), "2026-03-01 08:00:05 EET");
+    EXPECT_EQ(span_words(milliseconds(90'000)), "90 s");
+    EXPECT_EQ(span_words(milliseconds(450'000)), "7.5 min");
+}
+
 TEST(IsoDate, CountsDaysFrom1970) {
     EXPECT_EQ(iso_date(0), "1970-01-01");
     EXPECT_EQ(iso_date(20'513), "2026-03-01");  // 1772323200 / 86400

@@ -2,7 +2,6 @@
 // last bit.
 #include "daemon/watch/judge.hpp"
 
-#include <fmt/format.h>
 #include <gmock/gmock.h>
 #include <gtest/gtest.h>
 
@@ -11,10 +10,7 @@
 #include <set>
 
 #include "daemon/ledger/lives.hpp"
-#include "daemon/ledger/open_ledger.hpp"
-#include "daemon/ledger/reader.hpp"
-#include "tests/daemon/watch/demo_pump.hpp"
-#include "tests/support/temp_folder.hpp"
+#include "tests/daemon/watch/judged_mill.hpp"
 
 namespace slipledger::watch {
 namespace {
@@ -24,83 +20,6 @@ using analytics::Basis;
 using analytics::Instant;
 using analytics::Level;
 using ledger::Row;
-
-// A ledger in a folder of its own, judged by hand.
-class Mill {
-    testing::TempFolder folder_;  // first: the plant lies in it
-
-public:
-    explicit Mill(std::vector<std::string> pumps = {"press-1"})
-        : plant(demo_plant(folder_.path().string(), pumps)), ledger_(ledger::open_ledger(plant)) {}
-
-    ledger::PointId point(const std::string& pump) { return *ledger_->directory().point(pump, ""); }
-
-    void store(std::span<const Row> rows) {
-        ledger::IntakeBatch batch;
-        batch.rows.assign(rows.begin(), rows.end());
-        batch.sources = static_cast<std::uint32_t>(rows.size());
-        for (std::uint32_t i = 0; i < batch.sources; ++i) batch.rows[i].source = i;
-        ledger_->store(std::vector{batch});
-        while (ledger_->close_hours()) {
-        }
-    }
-
-    void tell(const ledger::Event& event) { ledger_->store(event); }
-
-    void judge() {
-        const ledger::Reader reader(plant.store.path);
-        for (int passes = 0; passes < 100; ++passes) {
-            const auto marks = reader.marks();
-            if (marks.empty()) return;
-            for (const ledger::Mark& mark : marks)
-                EXPECT_TRUE(ledger_->store(judge_pump(reader, plant, ledger_->directory(), mark)));
-        }
-        FAIL() << "marks never come to an end";
-    }
-
-    ledger::TrackId track(const std::string& pump, Basis basis) {
-        return ledger_->directory().track(pump, "A", basis).id;
-    }
-    std::vector<ledger::DayRecord> days(const std::string& pump, Basis basis = Basis::case_drain) {
-        return ledger::Reader(plant.store.path).days(track(pump, basis), -1000000, 1000000);
-    }
-    std::vector<ledger::Notice> notices() { return ledger::Reader(plant.store.path).notices(""); }
-
-    // Everything that is judged, to the last bit.
-    std::string history() {
-        const ledger::Reader reader(plant.store.path);
-        std::string text;
-        for (const ledger::TrackEntry& entry : ledger_->directory().tracks) {
-            text += fmt::format("track {} {} {}\n", entry.pump_name, entry.section, name_of(entry.basis));
-            for (const auto& day : reader.days(entry.id, -1000000, 1000000)) text += line(day);
-            for (const auto& one : reader.summaries(entry.id, demo_begin - 24h, demo_begin + 24h * 400)) text += line(one);
-            for (const auto& change : reader.alarm_changes(entry.id)) text += line(change);
-        }
-        return text;
-    }
-
-    config::Plant plant;
-
-private:
-    static std::string line(const ledger::DayRecord& day) {
-        const analytics::DayVerdict& v = day.verdict;
-        return fmt::format("day {} {} life {} {} {} {:a} {:a} {:a} {:a} {:a} {:a} {:a}\n", v.day.date, day.finished, v.life,
-                           name_of(v.level), name_of(v.reason), v.leakage_ratio.value, v.leakage_ratio.low,
-                           v.leakage_ratio.high, v.efficiency.value, v.excess_lpm, v.hours_in_hand.low,
-                           v.life_running_h);
-    }
-    static std::string line(const ledger::SummaryRecord& one) {
-        return fmt::format("summary {} {} {} {:a} {:a} {:a} {:a}\n", one.summary.start.time_since_epoch().count(),
-                           one.date, name_of(one.verdict.level), one.summary.judged[0].leakage_lpm,
-                           one.verdict.leakage_ratio.value, one.verdict.filtered_ratio.value, one.summary.running_h);
-    }
-    static std::string line(const analytics::AlarmChange& change) {
-        return fmt::format("alarm {} {} {} {} {}\n", name_of(change.rule), name_of(change.edge), name_of(change.level),
-                           change.at.time_since_epoch().count(), change.began.time_since_epoch().count());
-    }
-
-    std::unique_ptr<ledger::Ledger> ledger_;
-};
 
 class JudgedHistory : public ::testing::Test {
 protected:
@@ -162,6 +81,31 @@ TEST_F(JudgedHistory, ChangesWithOneLateRowAsIfItHadComeInTime) {
     const auto late = late_last.begin() + 9 * 288 + 11;  // five minutes before an hour's end
     std::rotate(late, late + 1, late_last.end());
     EXPECT_EQ(in_blocks(late_last, late_last.size() - 1, 1), in_blocks(all, 100000, 1));
+}
+
+// By delivery, swings of pressure count only with a speed sensor, and whether there is one is read off the days before: also
+// off those before the pass, over which the estimate is led again from the checkpoint.
+TEST_F(JudgedHistory, IsTheSameWithoutASpeedSensorWhereARowComesWeeksLate) {
+    const auto history = [](std::size_t late_rows) {
+        Mill mill;
+        std::vector<Row> all = demo_rows(mill.point("press-1"), 36, {}, 7);
+        for (Row& row : all) {
+            using analytics::Quantity;
+            const double drain = row.value[index_of(Quantity::case_drain_flow)];
+            row.present = static_cast<std::uint16_t>(1U << index_of(Quantity::delivery_flow) |
+                                                     1U << index_of(Quantity::outlet_pressure) |
+                                                     1U << index_of(Quantity::fluid_temperature));
+            row.value[index_of(Quantity::delivery_flow)] = 71.0 * 1.48 - drain;
+        }
+        const auto late = all.begin() + 24 * 288 + 7;
+        std::rotate(late, late + static_cast<std::ptrdiff_t>(late_rows), all.end());
+        mill.store(std::span(all).first(all.size() - late_rows));
+        mill.judge();
+        mill.store(std::span(all).last(late_rows));
+        mill.judge();
+        return mill.history();
+    };
+    EXPECT_EQ(history(1), history(0));
 }
 
 // Five years are more summaries than one pass takes, so this one is cut short and gone on with.
